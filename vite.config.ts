@@ -1,0 +1,46 @@
+import tailwindcss from '@tailwindcss/vite';
+import react from '@vitejs/plugin-react';
+import { defineConfig } from 'vitest/config';
+
+export default defineConfig({
+  plugins: [react(), tailwindcss()],
+  build: {
+    outDir: 'dist',
+    // The content security policy allows neither inline scripts nor data: fonts.
+    assetsInlineLimit: 0,
+    modulePreload: { polyfill: false },
+  },
+  test: {
+    // One database server and one browser on two cores: the time-outs are for a machine that is busy.
+    testTimeout: 20_000,
+    hookTimeout: 60_000,
+    projects: [
+      {
+        extends: true,
+        test: {
+          name: 'node',
+          environment: 'node',
+          include: ['tests/**/*.test.ts'],
+          exclude: ['tests/e2e/**'],
+          globalSetup: ['tests/support/database-setup.ts'],
+        },
+      },
+      {
+        extends: true,
+        test: { name: 'jsdom', environment: 'jsdom', include: ['tests/**/*.test.tsx'] },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'e2e',
+          environment: 'node',
+          include: ['tests/e2e/**/*.test.ts'],
+          globalSetup: ['tests/support/database-setup.ts', 'tests/support/client-setup.ts'],
+          fileParallelism: false,
+          testTimeout: 180_000,
+          hookTimeout: 180_000,
+        },
+      },
+    ],
+  },
+});

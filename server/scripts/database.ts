@@ -1,23 +1,12 @@
-import { type ChildProcess, spawn, spawnSync } from 'node:child_process';
+import { spawnSync } from 'node:child_process';
 import { createHash } from 'node:crypto';
-import {
-  chmodSync,
-  closeSync,
-  existsSync,
-  mkdirSync,
-  openSync,
-  readFileSync,
-  renameSync,
-  rmSync,
-  statSync,
-  writeFileSync,
-} from 'node:fs';
+import { chmodSync, existsSync, mkdirSync, renameSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { tmpdir, userInfo } from 'node:os';
 import { join } from 'node:path';
 import mysql, { type Pool } from 'mysql2/promise';
 import { inheritedEnvironment } from '../environment.ts';
+import { type Child, settleEarlierChild, startChild } from './child.ts';
 import { requireFreePort } from './port.ts';
-import { commandLineOf, startOfProcess } from './process-identity.ts';
 import { secretsOf } from './secrets.ts';
 import { waitUntil } from './wait-until.ts';
 
@@ -32,9 +21,7 @@ export type DatabaseServer = {
   readonly migrate: Account;
   /** Reads and writes rows; what the server runs as. Its rights on tables come with the migrations. */
   readonly app: Account;
-  readonly pid: number;
-  /** Settles when the process ends, whoever ended it. */
-  readonly ended: Promise<void>;
+  readonly child: Child;
   readonly stop: () => Promise<void>;
 };
 
@@ -143,42 +130,6 @@ function accountStatements(migratePassword: string, appPassword: string): string
   ].join('\n');
 }
 
-/** The last lines that the server wrote since `offset`, for the sentence of a failed start. */
-function tailOfLog(log: string, offset: number): string {
-  if (!existsSync(log)) return '(the log is empty)';
-  const lines = readFileSync(log).subarray(offset).toString('utf8').trim().split('\n');
-  return lines.slice(-12).join('\n') || '(the log is empty)';
-}
-
-/**
- * Deals with a server of an earlier start. A live one whose starter lives is left alone and named; one that outlived
- * its starter is stopped cleanly; a pid file that names nothing of ours is removed.
- */
-async function settleEarlierServer(folder: string, say: (line: string) => void): Promise<void> {
-  const pidFile = join(folder, 'db.pid');
-  if (!existsSync(pidFile)) return;
-  const pid = Number(readFileSync(pidFile, 'utf8').trim());
-  const isOurs = pid > 1 && commandLineOf(pid).includes(`--datadir=${join(folder, 'data')}`);
-  if (isOurs && startOfProcess(pid)) {
-    const [ownerPid, ownerStart] = existsSync(join(folder, 'owner'))
-      ? readFileSync(join(folder, 'owner'), 'utf8').trim().split(' ')
-      : [];
-    if (ownerPid && startOfProcess(Number(ownerPid)) === ownerStart) {
-      throw new Error(
-        `This folder's database already runs (process ${pid}), started by process ${ownerPid}. ` +
-          'Stop that one first (Ctrl-C where it runs), or use another folder with STEMMA_DATA=….',
-      );
-    }
-    say(`A database of an earlier start was left running (process ${pid}); stopping it.`);
-    process.kill(pid, 'SIGTERM');
-    await waitUntil(() => startOfProcess(pid) === null, {
-      timeoutMs: 60_000,
-      tooLate: () => `The database left over from an earlier start (process ${pid}) does not stop. Stop it yourself.`,
-    });
-  }
-  rmSync(pidFile, { force: true });
-}
-
 async function accepts(socketPath: string): Promise<boolean> {
   try {
     const connection = await mysql.createConnection({ socketPath, user: 'root', connectTimeout: 2000 });
@@ -187,13 +138,6 @@ async function accepts(socketPath: string): Promise<boolean> {
   } catch {
     return false;
   }
-}
-
-function whenEnded(child: ChildProcess): Promise<void> {
-  return new Promise((resolve) => {
-    child.once('exit', () => resolve());
-    child.once('error', () => resolve());
-  });
 }
 
 /**
@@ -207,76 +151,55 @@ export async function startDatabaseServer({ dataFolder, port, say = () => {} }: 
   mkdirSync(folder, { recursive: true, mode: 0o700 });
   chmodSync(folder, 0o700);
   const secrets = secretsOf(dataFolder);
-  await settleEarlierServer(folder, say);
+  await settleEarlierChild(folder, 'database', 'The database', say);
   await requireFreePort(port, 'the database', 'STEMMA_DB_PORT');
   initialise(folder, say);
 
   const socketPath = socketPathFor(folder);
-  const log = join(folder, 'db-error.log');
-  const offset = existsSync(log) ? statSync(log).size : 0;
   const initFile = join(folder, 'accounts.sql');
   writeFileSync(initFile, accountStatements(secrets.migratePassword, secrets.appPassword), { mode: 0o600 });
-  writeFileSync(join(folder, 'owner'), `${process.pid} ${startOfProcess(process.pid)}\n`);
 
-  // What goes wrong before the log is open is written to the error stream: it belongs in the same file.
-  const output = openSync(log, 'a', 0o600);
-  // A group of its own: Ctrl-C in the terminal must reach the server last, through us.
-  const child = spawn(
-    program,
-    [
+  const child = startChild({
+    name: 'database',
+    folder,
+    command: program,
+    args: [
       '--no-defaults',
       `--user=${userInfo().username}`,
       `--datadir=${join(folder, 'data')}`,
       '--bind-address=127.0.0.1',
       `--port=${port}`,
       `--socket=${socketPath}`,
-      `--pid-file=${join(folder, 'db.pid')}`,
-      `--log-error=${log}`,
+      `--pid-file=${join(folder, 'mariadbd.pid')}`,
       `--init-file=${initFile}`,
       '--skip-name-resolve',
       ...safetySettings,
     ],
-    { detached: true, stdio: ['ignore', output, output] },
-  );
-  closeSync(output);
-  const ended = whenEnded(child);
-  let hasEnded = false;
-  void ended.then(() => {
-    hasEnded = true;
+    patienceMs: 60_000,
   });
-
   try {
     await waitUntil(
       () => {
-        if (hasEnded) throw new Error(`The database did not start. Its log ends with:\n${tailOfLog(log, offset)}`);
+        if (child.hasEnded()) throw new Error(`The database did not start. Its log ends with:\n${child.logTail()}`);
         return accepts(socketPath);
       },
       {
         timeoutMs: 120_000,
-        tooLate: () => `The database did not answer within two minutes. Its log ends with:\n${tailOfLog(log, offset)}`,
+        tooLate: () => `The database did not answer within two minutes. Its log ends with:\n${child.logTail()}`,
       },
     );
   } catch (error) {
-    child.kill('SIGTERM');
-    await ended;
+    await child.stop();
     throw error;
   }
-  child.unref();
-
   return {
     host: '127.0.0.1',
     port,
     socketPath,
     migrate: { user: 'stemma_migrate', password: secrets.migratePassword },
     app: { user: 'stemma_app', password: secrets.appPassword },
-    pid: child.pid as number,
-    ended,
-    stop: async () => {
-      child.ref();
-      child.kill('SIGTERM');
-      await ended;
-      rmSync(join(folder, 'owner'), { force: true });
-    },
+    child,
+    stop: child.stop,
   };
 }
 

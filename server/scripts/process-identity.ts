@@ -15,12 +15,3 @@ export function startOfProcess(pid: number): string | null {
     return null;
   }
 }
-
-/** The command line of a live process, or an empty list. */
-export function commandLineOf(pid: number): readonly string[] {
-  try {
-    return readFileSync(`/proc/${pid}/cmdline`, 'utf8').split('\0').filter(Boolean);
-  } catch {
-    return [];
-  }
-}

@@ -2,9 +2,8 @@ import { randomUUID } from 'node:crypto';
 import type { Pool } from 'mysql2/promise';
 import { inject } from 'vitest';
 import { type Database, type DatabaseAddress, openDatabase } from '../../server/db/database.ts';
-import { applyGrants } from '../../server/db/grants.ts';
-import { migrateDatabase } from '../../server/db/migrate.ts';
-import { createDatabase, dropDatabase, openAdmin } from '../../server/scripts/database.ts';
+import { dropDatabase, openAdmin } from '../../server/scripts/database.ts';
+import { prepareDatabase } from '../../server/scripts/prepare-database.ts';
 
 export type FreshDatabase = {
   /** Signed in as the server's account. */
@@ -20,26 +19,19 @@ export type FreshDatabase = {
 export async function freshDatabase(): Promise<FreshDatabase> {
   const server = inject('databaseServer');
   const name = `stemma_test_${randomUUID().replaceAll('-', '')}`;
-  const admin = openAdmin(server, undefined);
-  try {
-    await createDatabase(admin, name);
-  } finally {
-    await admin.end();
-  }
-  const ownAdmin = openAdmin(server, name);
+  await prepareDatabase(server, name);
   const { host, port } = server;
-  await migrateDatabase({ host, port, ...server.migrate, database: name });
-  await applyGrants(ownAdmin, name);
   const address: DatabaseAddress = { host, port, ...server.app, database: name };
   const db = openDatabase(address);
+  const admin = openAdmin(server, name);
   return {
     db,
-    admin: ownAdmin,
+    admin,
     address,
     drop: async () => {
       await db.$client.end();
-      await dropDatabase(ownAdmin, name);
-      await ownAdmin.end();
+      await dropDatabase(admin, name);
+      await admin.end();
     },
   };
 }

@@ -1,0 +1,43 @@
+import { createServer } from 'vite';
+import { readLauncherEnvironment } from '../environment.ts';
+import { startAppServer } from './app-server.ts';
+import { findFreePort, requireFreePort } from './port.ts';
+import { runUntilStopped } from './run-until-stopped.ts';
+import { secretsOf } from './secrets.ts';
+import { startSurroundings } from './surroundings.ts';
+
+await runUntilStopped(async ({ say, keep }) => {
+  const environment = readLauncherEnvironment();
+  const { database, mail } = await startSurroundings(environment, { say, keep });
+  await requireFreePort(environment.appPort, 'the app', 'STEMMA_PORT');
+
+  say('Starting the server; it restarts when a file of it changes.');
+  const server = keep(
+    'The server',
+    await startAppServer({
+      dataFolder: environment.dataFolder,
+      port: await findFreePort(),
+      publicAddress: environment.publicAddress,
+      database: { port: database.port, ...database.app, name: environment.databaseName },
+      smtpPort: environment.smtpPort,
+      sessionSecret: secretsOf(environment.dataFolder).sessionSecret,
+      mode: 'development',
+      say,
+    }),
+  );
+
+  say('Starting Vite; pages change as their files do.');
+  const vite = await createServer({
+    server: {
+      host: '127.0.0.1',
+      port: environment.appPort,
+      strictPort: true,
+      // The host stays as the browser sent it: the server compares it with the page's origin on every write.
+      proxy: { '/api': { target: server.address, changeOrigin: false } },
+    },
+  });
+  await vite.listen();
+  keep('Vite', { stop: () => vite.close() });
+  say(`Mails that Stemma sends are shown at ${mail.address}`);
+  say(`Stemma runs at ${environment.publicAddress} (Ctrl-C stops it)`);
+});

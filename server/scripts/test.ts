@@ -1,0 +1,3 @@
+import { runTests } from './run-tests.ts';
+
+process.exitCode = await runTests(process.argv.slice(2));

@@ -2,7 +2,7 @@ import { spawnSync } from 'node:child_process';
 import { createHash } from 'node:crypto';
 import { chmodSync, existsSync, mkdirSync, renameSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { tmpdir, userInfo } from 'node:os';
-import { join } from 'node:path';
+import { dirname, join } from 'node:path';
 import mysql, { type Pool } from 'mysql2/promise';
 import { inheritedEnvironment } from '../environment.ts';
 import { type Child, settleEarlierChild, startChild } from './child.ts';
@@ -199,7 +199,10 @@ export async function startDatabaseServer({ dataFolder, port, say = () => {} }: 
     migrate: { user: 'stemma_migrate', password: secrets.migratePassword },
     app: { user: 'stemma_app', password: secrets.appPassword },
     child,
-    stop: child.stop,
+    stop: async () => {
+      await child.stop();
+      if (dirname(socketPath) !== folder) rmSync(dirname(socketPath), { recursive: true, force: true });
+    },
   };
 }
 

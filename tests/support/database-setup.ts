@@ -20,9 +20,14 @@ declare module 'vitest' {
 }
 
 type Running = { readonly server: TestDatabaseServer; readonly stop: () => Promise<void> };
-// Several projects of one run share the server; the last one out stops it.
-let running: Promise<Running> | null = null;
-let users = 0;
+type Shared = { running: Promise<Running> | null; users: number };
+
+// Several projects of one run share the server and the last one out stops it. Each project loads this file anew, so
+// what they share lives on the process.
+const key = Symbol.for('stemma.test-database');
+const holder = globalThis as unknown as Record<symbol, Shared | undefined>;
+holder[key] ??= { running: null, users: 0 };
+const shared: Shared = holder[key];
 
 async function start(): Promise<Running> {
   // A folder for each run, so that two runs at once do not meet.
@@ -40,12 +45,12 @@ async function start(): Promise<Running> {
 
 /** Starts one MariaDB for the run and tells the tests where it is. */
 export default async function setUp(project: TestProject): Promise<() => Promise<void>> {
-  users += 1;
-  running ??= start();
-  const { server, stop } = await running;
+  shared.users += 1;
+  shared.running ??= start();
+  const { server, stop } = await shared.running;
   project.provide('databaseServer', server);
   return async () => {
-    users -= 1;
-    if (users === 0) await stop();
+    shared.users -= 1;
+    if (shared.users === 0) await stop();
   };
 }

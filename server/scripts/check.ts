@@ -1,6 +1,7 @@
 import { spawnSync } from 'node:child_process';
 import { join } from 'node:path';
 import { runTests } from './run-tests.ts';
+import { sentenceOf } from './sentence-of.ts';
 
 const root = join(import.meta.dirname, '../..');
 const program = (path: string) => join(root, 'node_modules', path);
@@ -26,4 +27,7 @@ async function check(): Promise<number> {
   return passes(build) ? 0 : 1;
 }
 
-process.exitCode = await check();
+process.exitCode = await check().catch((error: unknown) => {
+  process.stderr.write(`${sentenceOf(error)}\n`);
+  return 1;
+});

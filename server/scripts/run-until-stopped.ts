@@ -1,5 +1,5 @@
-import { EnvironmentError } from '../environment.ts';
 import type { Child } from './child.ts';
+import { sentenceOf } from './sentence-of.ts';
 
 /** Something that runs beside the script until it is stopped. */
 export type Part = { readonly child?: Child; readonly stop: () => Promise<void> };
@@ -49,8 +49,7 @@ export async function runUntilStopped(launch: (launch: Launch) => Promise<void>)
     await launch({ say, keep });
     failure = await wait;
   } catch (error) {
-    if (error instanceof EnvironmentError) failure = error.sentences.join('\n');
-    else if (!(error instanceof AskedToStop)) failure = error instanceof Error ? error.message : String(error);
+    if (!(error instanceof AskedToStop)) failure = sentenceOf(error);
   }
   if (failure !== null) {
     process.stderr.write(`\n${failure}\n`);

@@ -12,11 +12,11 @@ await runUntilStopped(async ({ say, keep }) => {
   await requireFreePort(environment.appPort, 'the app', 'STEMMA_PORT');
 
   say('Starting the server; it restarts when a file of it changes.');
-  const server = keep(
-    'The server',
-    await startAppServer({
+  const serverPort = await findFreePort();
+  const server = await keep('The server', () =>
+    startAppServer({
       dataFolder: environment.dataFolder,
-      port: await findFreePort(),
+      port: serverPort,
       publicAddress: environment.publicAddress,
       database: { port: database.port, ...database.app, name: environment.databaseName },
       smtpPort: environment.smtpPort,
@@ -27,17 +27,19 @@ await runUntilStopped(async ({ say, keep }) => {
   );
 
   say('Starting Vite; pages change as their files do.');
-  const vite = await createServer({
-    server: {
-      host: '127.0.0.1',
-      port: environment.appPort,
-      strictPort: true,
-      // The host stays as the browser sent it: the server compares it with the page's origin on every write.
-      proxy: { '/api': { target: server.address, changeOrigin: false } },
-    },
+  await keep('Vite', async () => {
+    const vite = await createServer({
+      server: {
+        host: '127.0.0.1',
+        port: environment.appPort,
+        strictPort: true,
+        // The host stays as the browser sent it: the server compares it with the page's origin on every write.
+        proxy: { '/api': { target: server.address, changeOrigin: false } },
+      },
+    });
+    await vite.listen();
+    return { stop: () => vite.close() };
   });
-  await vite.listen();
-  keep('Vite', { stop: () => vite.close() });
   say(`Mails that Stemma sends are shown at ${mail.address}`);
   say(`Stemma runs at ${environment.publicAddress} (Ctrl-C stops it)`);
 });

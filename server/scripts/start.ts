@@ -10,9 +10,8 @@ await runUntilStopped(async ({ say, keep }) => {
   const { database, mail } = await startSurroundings(environment, { say, keep });
   buildClient(say);
   say('Starting the server.');
-  keep(
-    'The server',
-    await startAppServer({
+  await keep('The server', () =>
+    startAppServer({
       dataFolder: environment.dataFolder,
       port: environment.appPort,
       publicAddress: environment.publicAddress,

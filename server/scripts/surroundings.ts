@@ -14,13 +14,14 @@ export async function startSurroundings(
   const { dataFolder, databaseName } = environment;
   installMissing([mariadbServer], say);
   say(`Starting the database on port ${environment.databasePort} with its data in ${dataFolder}.`);
-  const database = keep('The database', await startDatabaseServer({ dataFolder, port: environment.databasePort, say }));
+  const database = await keep('The database', () =>
+    startDatabaseServer({ dataFolder, port: environment.databasePort, say }),
+  );
   say('Bringing its tables up to date.');
   await prepareDatabase(database, databaseName);
   say(`Starting the mail catcher on port ${environment.smtpPort}.`);
-  const mail = keep(
-    'The mail catcher',
-    await startMailCatcher({
+  const mail = await keep('The mail catcher', () =>
+    startMailCatcher({
       dataFolder,
       smtpPort: environment.smtpPort,
       pagePort: environment.mailPagePort,

@@ -1,4 +1,4 @@
-import type { Quantity, Route, RouteKind, StudyModel } from '../../shared/engine/model/study-model.ts';
+import type { Route, RouteKind } from '../../shared/engine/model/study-model.ts';
 
 export type Origin = 'measured' | 'correlation' | 'given' | 'computed' | 'open';
 
@@ -29,14 +29,6 @@ export const routeKindWords: Record<RouteKind, string> = {
   correlation: 'Correlation',
   balance: 'Balance',
 };
-
-/** The adopted route, or the only one. */
-export function routeInForce(model: StudyModel, quantity: Quantity): Route | null {
-  const routes = model.routes.filter((route) => route.quantityId === quantity.id);
-  return (
-    routes.find((route) => route.id === quantity.adoptedRouteId) ?? (routes.length === 1 ? (routes[0] ?? null) : null)
-  );
-}
 
 export function originOf(route: Route | null): Origin {
   return route ? originOfKind[route.kind] : 'open';

@@ -21,7 +21,7 @@ export function conflictFields(conflict: Conflict): readonly ConflictField[] {
  */
 export function mergeConflict(conflict: Conflict, choices: Readonly<Record<string, Side>>): ItemBody | null {
   const { yours, theirs } = conflict;
-  const whole = choices['*'] ?? choices['kind'];
+  const whole = choices['*'] ?? choices.kind;
   if (whole) return whole === 'yours' ? yours : theirs;
   if (yours === null || theirs === null) return yours;
   const left = yours as unknown as Record<string, unknown>;

@@ -105,5 +105,5 @@ export function loopOf(model: StudyModel, sourceId: string, targetId: string): s
   });
   const loop = findCycle({ ...model, routes: [...model.routes, probe] });
   if (!loop) return null;
-  return `That link would close a loop: ${loop.join(' → ')}. A number cannot rest on itself.`;
+  return `That link would close a loop: ${[...loop, loop[0]].join(' → ')}. A number cannot rest on itself.`;
 }

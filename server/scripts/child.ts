@@ -70,6 +70,15 @@ export function startChild({ name, folder, command, args, env, patienceMs = 15_0
     writeFileSync(recordOf(folder, name), `${pid} ${startOfProcess(pid)} ${owner}\n`);
   }
 
+  // The whole group: a program that runs another (tsx watch) must not leave that one behind.
+  const signal = (name: NodeJS.Signals) => {
+    try {
+      if (pid > 0) process.kill(-pid, name);
+    } catch {
+      // Nobody is left in the group.
+    }
+  };
+
   return {
     pid,
     ended,
@@ -80,10 +89,11 @@ export function startChild({ name, folder, command, args, env, patienceMs = 15_0
     },
     stop: async () => {
       if (hasEnded) return;
-      child.kill('SIGTERM');
-      const insist = setTimeout(() => child.kill('SIGKILL'), patienceMs);
+      signal('SIGTERM');
+      const insist = setTimeout(() => signal('SIGKILL'), patienceMs);
       await ended;
       clearTimeout(insist);
+      signal('SIGKILL');
     },
   };
 }

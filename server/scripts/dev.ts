@@ -1,3 +1,4 @@
+import { createServer as createHttpServer } from 'node:http';
 import { createServer } from 'vite';
 import { readLauncherEnvironment } from '../environment.ts';
 import { startAppServer } from './app-server.ts';
@@ -28,17 +29,25 @@ await runUntilStopped(async ({ say, keep }) => {
 
   say('Starting Vite; pages change as their files do.');
   await keep('Vite', async () => {
+    // As middleware of our own server: by itself Vite would end this process on SIGTERM before the rest is stopped.
+    const http = createHttpServer();
     const vite = await createServer({
       server: {
-        host: '127.0.0.1',
-        port: environment.appPort,
-        strictPort: true,
+        middlewareMode: { server: http },
+        hmr: { server: http },
         // The host stays as the browser sent it: the server compares it with the page's origin on every write.
         proxy: { '/api': { target: server.address, changeOrigin: false } },
       },
     });
-    await vite.listen();
-    return { stop: () => vite.close() };
+    http.on('request', vite.middlewares);
+    await new Promise<void>((resolve) => http.listen(environment.appPort, '127.0.0.1', resolve));
+    return {
+      stop: async () => {
+        await vite.close();
+        http.closeAllConnections();
+        await new Promise((resolve) => http.close(resolve));
+      },
+    };
   });
   say(`Mails that Stemma sends are shown at ${mail.address}`);
   say(`Stemma runs at ${environment.publicAddress} (Ctrl-C stops it)`);

@@ -42,6 +42,21 @@ describe('a started program', () => {
     expect(startOfProcess(stubborn.pid)).toBeNull();
   });
 
+  it('takes along the programs that it started itself', async () => {
+    const inner = "console.log('inner ' + process.pid); setInterval(() => {}, 1000)";
+    const outer = startNode(
+      `require('node:child_process').spawn(process.execPath, ['-e', ${JSON.stringify(inner)}], { stdio: 'inherit' });
+       setInterval(() => {}, 1000)`,
+    );
+    await logContains('inner ');
+    const innerPid = Number(/inner (\d+)/.exec(readFileSync(join(folder, 'part.log'), 'utf8'))?.[1]);
+
+    await outer.stop();
+
+    await waitUntil(() => startOfProcess(innerPid) === null, { timeoutMs: 5000, tooLate: () => 'It still runs.' });
+    expect(startOfProcess(innerPid)).toBeNull();
+  });
+
   it('leaves the end of its output for the sentence about its failure', async () => {
     const failing = startNode("console.error('the disk is full'); process.exit(3)");
 

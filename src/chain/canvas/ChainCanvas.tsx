@@ -183,7 +183,7 @@ function Sheet({ onConnect, onRemove, onListLinks, onOpen }: ChainCanvasProps) {
   }
 
   function handleKeyDown(event: KeyboardEvent): void {
-    const id = event.target instanceof HTMLElement ? event.target.dataset['quantity'] : undefined;
+    const id = event.target instanceof HTMLElement ? event.target.dataset.quantity : undefined;
     if (!id) return;
     const meant = handleCanvasKey(event, id, {
       layout,
@@ -211,7 +211,6 @@ function Sheet({ onConnect, onRemove, onListLinks, onOpen }: ChainCanvasProps) {
   }
 
   return (
-    // biome-ignore lint/a11y/noStaticElementInteractions: keys bubble up from the focused node
     <section
       ref={wrapper}
       className="chain-canvas relative h-full min-h-0 bg-paper"
@@ -284,7 +283,8 @@ function ZoomButtons({ onFit }: { readonly onFit: () => void }) {
   const percent = useStore((store) => Math.round(store.transform[2] * 100));
   const button = 'min-h-8 min-w-8 px-2 hover:bg-sunk border-l border-rule first:border-l-0';
   return (
-    <div className="flex border border-rule bg-surface text-sm" role="group" aria-label="Zoom">
+    <fieldset className="flex border border-rule bg-surface text-sm">
+      <legend className="sr-only">Zoom</legend>
       <button type="button" className={button} aria-label="Zoom out" onClick={() => void flow.zoomOut()}>
         −
       </button>
@@ -297,6 +297,6 @@ function ZoomButtons({ onFit }: { readonly onFit: () => void }) {
       <button type="button" className={button} onClick={onFit}>
         Fit
       </button>
-    </div>
+    </fieldset>
   );
 }

@@ -103,7 +103,6 @@ export function QuantityNode({ id, data }: NodeProps<QuantityFlowNode>) {
       role="group"
       aria-roledescription="quantity"
       aria-label={`${describeQuantity(state, evaluation, quantity)} ${data.position}`}
-      // biome-ignore lint/a11y/noNoninteractiveTabindex: one Tab stop with roving focus, keys are handled by the canvas
       tabIndex={data.isTabStop ? 0 : -1}
       data-quantity={id}
       data-state={status ?? 'draft'}

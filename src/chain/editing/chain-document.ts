@@ -1,5 +1,6 @@
 import type { ProblemBody } from '../../../shared/api/problem.ts';
 import type { ChainEdit, RouteState, Study } from '../../../shared/api/studies.ts';
+import { chainItemSchema } from '../../../shared/domain/audit-events.ts';
 import type { StudyModel } from '../../../shared/engine/model/study-model.ts';
 import type { Layout } from '../lanes.ts';
 import { applyEdits, changedItems, type ItemBody, type ItemEdit, invertEdits, sameContent } from './chain-edits.ts';
@@ -138,6 +139,12 @@ export class ChainDocument {
       if (state?.status === 'approved' && !this.state.reasons[edit.id]) {
         return 'This route is approved. Open a new revision and give the reason before you change it.';
       }
+    }
+    for (const edit of edits) {
+      if (edit.body === null) continue;
+      const read = chainItemSchema.safeParse({ kind: edit.kind, body: edit.body });
+      const issue = read.error?.issues[0];
+      if (issue) return `${String(issue.path.at(-1) ?? edit.kind)}: ${issue.message}`;
     }
     const known = new Set(this.ports.check(this.state.model));
     return this.ports.check(next).find((sentence) => !known.has(sentence)) ?? null;

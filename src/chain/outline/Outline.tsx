@@ -40,21 +40,22 @@ export function Outline({ onOpen }: { readonly onOpen: (id: string) => void }) {
 
   function handleKeyDown(event: KeyboardEvent, row: OutlineRow, index: number): void {
     const isOpen = !collapsed.has(row.key);
-    const act: Record<string, () => void> = {
-      ArrowDown: () => focusRow(rows[index + 1]?.key),
-      ArrowUp: () => focusRow(rows[index - 1]?.key),
-      Home: () => focusRow(rows[0]?.key),
-      End: () => focusRow(rows.at(-1)?.key),
-      ArrowRight: () =>
-        row.hasInputs && !isOpen ? toggle(row, true) : row.hasInputs ? focusRow(rows[index + 1]?.key) : undefined,
-      ArrowLeft: () =>
-        row.hasInputs && isOpen ? toggle(row, false) : row.parentKey ? focusRow(row.parentKey) : undefined,
-      Enter: () => (row.seeAbove ? focusRow(row.seeAbove) : onOpen(row.quantityId)),
-    };
-    const run = act[event.key];
-    if (!run || event.target !== event.currentTarget) return;
+    if (event.target !== event.currentTarget) return;
+    if (event.key === 'ArrowDown') focusRow(rows[index + 1]?.key);
+    else if (event.key === 'ArrowUp') focusRow(rows[index - 1]?.key);
+    else if (event.key === 'Home') focusRow(rows[0]?.key);
+    else if (event.key === 'End') focusRow(rows.at(-1)?.key);
+    else if (event.key === 'Enter') open(row);
+    else if (event.key === 'ArrowRight' && row.hasInputs) isOpen ? focusRow(rows[index + 1]?.key) : toggle(row, true);
+    else if (event.key === 'ArrowLeft')
+      row.hasInputs && isOpen ? toggle(row, false) : focusRow(row.parentKey ?? undefined);
+    else return;
     event.preventDefault();
-    run();
+  }
+
+  function open(row: OutlineRow): void {
+    if (row.seeAbove) focusRow(row.seeAbove);
+    else onOpen(row.quantityId);
   }
 
   return (
@@ -82,6 +83,7 @@ export function Outline({ onOpen }: { readonly onOpen: (id: string) => void }) {
         </span>
       </label>
       <div className="overflow-x-auto border border-rule bg-surface">
+        {/* biome-ignore lint/a11y/noNoninteractiveElementToInteractiveRole: a tree table; its cells take the role of grid cells from it */}
         <table role="treegrid" aria-label="What the quantity comes from" className="w-full min-w-160 text-sm">
           <thead>
             <tr className="border-b border-rule text-left text-xs text-ink-2">
@@ -115,7 +117,7 @@ export function Outline({ onOpen }: { readonly onOpen: (id: string) => void }) {
                 tabIndex={row.key === tabStop ? 0 : -1}
                 onFocus={() => setActiveKey(row.key)}
                 onKeyDown={(event) => handleKeyDown(event, row, index)}
-                onClick={() => (row.seeAbove ? focusRow(row.seeAbove) : onOpen(row.quantityId))}
+                onClick={() => open(row)}
                 className="h-9 cursor-pointer border-b border-hair hover:bg-sunk focus-visible:outline-offset-[-3px] aria-selected:bg-sunk"
               >
                 <RowCells
@@ -154,7 +156,7 @@ function RowCells({
   const status = quantityState(state, quantity);
   return (
     <>
-      <td role="gridcell" className="px-3">
+      <td className="px-3">
         <span className="flex items-center gap-2" style={{ paddingInlineStart: (row.level - 1) * 24 }}>
           {row.hasInputs ? (
             <button
@@ -190,7 +192,7 @@ function RowCells({
         </span>
       </td>
       {row.seeAbove ? (
-        <td role="gridcell" colSpan={4} className="px-2">
+        <td colSpan={4} className="px-2">
           <button
             type="button"
             tabIndex={-1}
@@ -205,26 +207,22 @@ function RowCells({
         </td>
       ) : (
         <>
-          <td role="gridcell" className="px-2 whitespace-nowrap">
-            {route ? routeKindWords[route.kind] : 'no route in force'}
-          </td>
-          <td role="gridcell" className="px-2 whitespace-nowrap">
+          <td className="px-2 whitespace-nowrap">{route ? routeKindWords[route.kind] : 'no route in force'}</td>
+          <td className="px-2 whitespace-nowrap">
             {result ? (
               <Measured value={result.value} u={result.u} unit={quantity.unit} />
             ) : (
               <span className="text-ink-2">no value yet</span>
             )}
           </td>
-          <td role="gridcell" className="px-2 text-xs">
+          <td className="px-2 text-xs">
             {tag ? (
               <VerdictMark verdict={tag.verdict} words={tag.words} />
             ) : (
               <span className="text-ink-2">nothing to check</span>
             )}
           </td>
-          <td role="gridcell" className="px-2 text-xs">
-            {status && <StatusMark status={status} />}
-          </td>
+          <td className="px-2 text-xs">{status && <StatusMark status={status} />}</td>
         </>
       )}
     </>

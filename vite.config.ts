@@ -37,6 +37,8 @@ export default defineConfig({
           include: ['tests/e2e/**/*.test.ts'],
           globalSetup: ['tests/support/database-setup.ts', 'tests/support/client-setup.ts'],
           fileParallelism: false,
+          // After the others: a browser that shares two cores with them would be slow at random.
+          sequence: { groupOrder: 1 },
           testTimeout: 180_000,
           hookTimeout: 180_000,
         },

@@ -1,9 +1,11 @@
-import { rmSync } from 'node:fs';
+import { mkdirSync, readdirSync, rmSync } from 'node:fs';
 import { join } from 'node:path';
 import type { TestProject } from 'vitest/node';
 import { readLauncherEnvironment } from '../../server/environment.ts';
+import { settleEarlierChild } from '../../server/scripts/child.ts';
 import { startDatabaseServer } from '../../server/scripts/database.ts';
 import { findFreePort } from '../../server/scripts/port.ts';
+import { startOfProcess } from '../../server/scripts/process-identity.ts';
 
 export type TestDatabaseServer = {
   readonly host: string;
@@ -29,14 +31,31 @@ const holder = globalThis as unknown as Record<symbol, Shared | undefined>;
 holder[key] ??= { running: null, users: 0 };
 const shared: Shared = holder[key];
 
+const testFolder = join(readLauncherEnvironment().dataFolder, 'test');
+
+/** Removes what runs left behind that were killed before they could tidy up. */
+async function sweepEarlierRuns(): Promise<void> {
+  mkdirSync(testFolder, { recursive: true });
+  for (const name of readdirSync(testFolder).filter((entry) => /^\d+$/.test(entry))) {
+    if (startOfProcess(Number(name)) !== null) continue;
+    await settleEarlierChild(join(testFolder, name, 'mariadb'), 'database', 'The test database', () => {});
+    rmSync(join(testFolder, name), { recursive: true, force: true });
+  }
+}
+
 async function start(): Promise<Running> {
+  await sweepEarlierRuns();
   // A folder for each run, so that two runs at once do not meet.
-  const dataFolder = join(readLauncherEnvironment().dataFolder, 'test', String(process.pid));
+  const dataFolder = join(testFolder, String(process.pid));
   const server = await startDatabaseServer({ dataFolder, port: await findFreePort() });
+  // A run that breaks off skips the tear-down; this still tells the database to end.
+  const endWithRun = () => process.kill(server.child.pid, 'SIGTERM');
+  process.once('exit', endWithRun);
   const { host, port, socketPath, migrate, app } = server;
   return {
     server: { host, port, socketPath, migrate, app },
     stop: async () => {
+      process.off('exit', endWithRun);
       await server.stop();
       rmSync(dataFolder, { recursive: true, force: true });
     },

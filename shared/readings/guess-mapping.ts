@@ -2,7 +2,7 @@ import Papa from 'papaparse';
 import { parseUnit, sameDimension } from '../engine/quantity/parse-unit.ts';
 import { type ColumnKey, columnKinds } from './column-kinds.ts';
 import { readNumber } from './read-number.ts';
-import type { ReadingsMapping } from './read-readings.ts';
+import type { ReadingsMapping } from './readings.ts';
 
 const delimiters = ['\t', ';', ','] as const;
 type Delimiter = (typeof delimiters)[number];

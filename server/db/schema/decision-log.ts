@@ -1,4 +1,5 @@
-import { bigint, char, customType, mysqlTable, primaryKey, varchar } from 'drizzle-orm/mysql-core';
+import { bigint, customType, mysqlTable, primaryKey, varchar } from 'drizzle-orm/mysql-core';
+import { identifier } from '../identifier.ts';
 
 const hash = customType<{ data: Buffer; driverData: Buffer }>({ dataType: () => 'binary(32)' });
 /** Bytes that are hashed as they are: no collation may change or compare them loosely. */
@@ -10,7 +11,7 @@ const microseconds = customType<{ data: string }>({ dataType: () => 'datetime(6)
 
 /** The last entry of each chain: one chain per study and one named `system`. */
 export const auditHead = mysqlTable('audit_head', {
-  chain: char('chain', { length: 36 }).primaryKey(),
+  chain: identifier('chain').primaryKey(),
   seq: bigint('seq', { mode: 'number' }).notNull(),
   hash: hash('hash').notNull(),
 });
@@ -22,10 +23,10 @@ export const auditHead = mysqlTable('audit_head', {
 export const auditEntry = mysqlTable(
   'audit_entry',
   {
-    chain: char('chain', { length: 36 }).notNull(),
+    chain: identifier('chain').notNull(),
     seq: bigint('seq', { mode: 'number' }).notNull(),
     at: microseconds('at').notNull(),
-    actorId: varchar('actor_id', { length: 36 }).notNull(),
+    actorId: identifier('actor_id').notNull(),
     /** The event's name, to filter by. */
     kind: varchar('kind', { length: 60 }).notNull(),
     payload: payloadText('payload').notNull(),

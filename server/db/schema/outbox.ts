@@ -1,5 +1,6 @@
-import { char, datetime, index, int, mysqlTable, text, varchar } from 'drizzle-orm/mysql-core';
+import { datetime, index, int, mysqlTable, text, varchar } from 'drizzle-orm/mysql-core';
 import * as z from 'zod';
+import { identifier } from '../identifier.ts';
 import { jsonColumn } from '../json-column.ts';
 
 /** Mails that are owed. Written in the transaction of the change; sent, retried and marked by the drain. */
@@ -7,9 +8,9 @@ export const outbox = mysqlTable(
   'outbox',
   {
     /** Also the local part of the Message-ID, so that a second copy can be recognised. */
-    id: char('id', { length: 36 }).primaryKey(),
+    id: identifier('id').primaryKey(),
     kind: varchar('kind', { length: 60 }).notNull(),
-    recipientId: char('recipient_id', { length: 36 }).notNull(),
+    recipientId: identifier('recipient_id').notNull(),
     payload: jsonColumn('payload', z.record(z.string(), z.unknown())).notNull(),
     createdAt: datetime('created_at', { fsp: 3 }).notNull(),
     /** Null once sent or given up. */

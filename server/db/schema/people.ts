@@ -1,9 +1,15 @@
-import { boolean, char, datetime, index, mysqlTable, varchar } from 'drizzle-orm/mysql-core';
+import { boolean, char, customType, datetime, index, mysqlTable, varchar } from 'drizzle-orm/mysql-core';
+import { identifier } from '../identifier.ts';
+
+/** Compared byte by byte after normalising, so that look-alikes are two addresses and never one person. */
+const emailColumn = customType<{ data: string }>({
+  dataType: () => 'varchar(254) character set utf8mb4 collate utf8mb4_nopad_bin',
+});
 
 export const people = mysqlTable('people', {
-  id: char('id', { length: 36 }).primaryKey(),
+  id: identifier('id').primaryKey(),
   /** Lower case, NFKC: one person for one address. */
-  email: varchar('email', { length: 254 }).notNull().unique(),
+  email: emailColumn('email').notNull().unique(),
   name: varchar('name', { length: 120 }).notNull(),
   /** Argon2id in PHC notation; null until the invitation is answered. */
   passwordHash: varchar('password_hash', { length: 255 }),
@@ -16,7 +22,7 @@ export const people = mysqlTable('people', {
 /** One-time links for set-up, invitations and forgotten passwords. Only the hash of the token is kept. */
 export const oneTimeLinks = mysqlTable('one_time_links', {
   tokenHash: char('token_hash', { length: 64 }).primaryKey(),
-  personId: char('person_id', { length: 36 }),
+  personId: identifier('person_id'),
   purpose: varchar('purpose', { length: 20, enum: ['setup', 'password'] }).notNull(),
   expiresAt: datetime('expires_at', { fsp: 3 }).notNull(),
   usedAt: datetime('used_at', { fsp: 3 }),
@@ -27,7 +33,7 @@ export const sessions = mysqlTable(
   {
     /** SHA-256 of the session id: a copy of the table opens no session. */
     idHash: char('id_hash', { length: 64 }).primaryKey(),
-    personId: char('person_id', { length: 36 }),
+    personId: identifier('person_id'),
     data: varchar('data', { length: 4000 }).notNull(),
     expiresAt: datetime('expires_at', { fsp: 3 }).notNull(),
   },

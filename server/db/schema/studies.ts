@@ -3,10 +3,11 @@ import * as z from 'zod';
 import { studyRoles } from '../../../shared/domain/ability.ts';
 import { chainItemKinds } from '../../../shared/domain/audit-events.ts';
 import { routeStatuses } from '../../../shared/domain/route-lifecycle.ts';
+import { identifier } from '../identifier.ts';
 import { jsonColumn } from '../json-column.ts';
 
 export const studies = mysqlTable('studies', {
-  id: char('id', { length: 36 }).primaryKey(),
+  id: identifier('id').primaryKey(),
   title: varchar('title', { length: 200 }).notNull(),
   question: text('question').notNull(),
   /** Raised by every change; the row is locked first by every command on the study. */
@@ -18,8 +19,8 @@ export const studies = mysqlTable('studies', {
 export const memberships = mysqlTable(
   'memberships',
   {
-    studyId: char('study_id', { length: 36 }).notNull(),
-    personId: char('person_id', { length: 36 }).notNull(),
+    studyId: identifier('study_id').notNull(),
+    personId: identifier('person_id').notNull(),
     role: varchar('role', { length: 20, enum: studyRoles }).notNull(),
   },
   (table) => [
@@ -33,15 +34,15 @@ export const memberships = mysqlTable(
 export const chainItems = mysqlTable(
   'chain_items',
   {
-    studyId: char('study_id', { length: 36 }).notNull(),
-    id: char('id', { length: 36 }).notNull(),
+    studyId: identifier('study_id').notNull(),
+    id: identifier('id').notNull(),
     kind: varchar('kind', { length: 20, enum: chainItemKinds }).notNull(),
     /** Order of creation within the study, so that lists keep their order. */
     position: int('position').notNull(),
     revision: int('revision').notNull(),
     /** Validated by the kind's schema where the model is put together. */
     body: jsonColumn('body', z.unknown()).notNull(),
-    lastEditedBy: char('last_edited_by', { length: 36 }).notNull(),
+    lastEditedBy: identifier('last_edited_by').notNull(),
   },
   (table) => [primaryKey({ columns: [table.studyId, table.id] })],
 );
@@ -49,11 +50,11 @@ export const chainItems = mysqlTable(
 export const routeStates = mysqlTable(
   'route_states',
   {
-    studyId: char('study_id', { length: 36 }).notNull(),
-    routeId: char('route_id', { length: 36 }).notNull(),
+    studyId: identifier('study_id').notNull(),
+    routeId: identifier('route_id').notNull(),
     status: varchar('status', { length: 20, enum: routeStatuses }).notNull(),
     revision: int('revision').notNull(),
-    submissionId: char('submission_id', { length: 36 }),
+    submissionId: identifier('submission_id'),
     /** Hash of everything upstream at approval; differs from now: basis changed. */
     signedBasisHash: char('signed_basis_hash', { length: 64 }),
   },
@@ -62,6 +63,6 @@ export const routeStates = mysqlTable(
 
 /** Where the nodes stand. Layout is not record: no log entry, last writer wins. */
 export const layouts = mysqlTable('layouts', {
-  studyId: char('study_id', { length: 36 }).primaryKey(),
+  studyId: identifier('study_id').primaryKey(),
   positions: jsonColumn('positions', z.record(z.string(), z.object({ x: z.number(), y: z.number() }))).notNull(),
 });

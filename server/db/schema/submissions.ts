@@ -2,23 +2,24 @@ import { char, datetime, index, mysqlTable, primaryKey, text, varchar } from 'dr
 import { snapshotSchema } from '../../../shared/api/submissions.ts';
 import { rulingSchema } from '../../../shared/domain/audit-events.ts';
 import { submissionStatuses } from '../../../shared/domain/route-lifecycle.ts';
+import { identifier } from '../identifier.ts';
 import { jsonColumn } from '../json-column.ts';
 
 export const submissions = mysqlTable(
   'submissions',
   {
-    id: char('id', { length: 36 }).primaryKey(),
-    studyId: char('study_id', { length: 36 }).notNull(),
-    targetQuantityId: char('target_quantity_id', { length: 36 }).notNull(),
+    id: identifier('id').primaryKey(),
+    studyId: identifier('study_id').notNull(),
+    targetQuantityId: identifier('target_quantity_id').notNull(),
     targetName: varchar('target_name', { length: 200 }).notNull(),
     status: varchar('status', { length: 20, enum: submissionStatuses }).notNull(),
     note: text('note').notNull(),
-    submittedBy: char('submitted_by', { length: 36 }).notNull(),
+    submittedBy: identifier('submitted_by').notNull(),
     submittedAt: datetime('submitted_at', { fsp: 3 }).notNull(),
     /** Canonical JSON (RFC 8785): the very bytes that were hashed. */
     snapshot: jsonColumn('snapshot', snapshotSchema).notNull(),
     snapshotHash: char('snapshot_hash', { length: 64 }).notNull(),
-    outcomeBy: char('outcome_by', { length: 36 }),
+    outcomeBy: identifier('outcome_by'),
     outcomeAt: datetime('outcome_at', { fsp: 3 }),
     outcomeComments: text('outcome_comments'),
   },
@@ -29,8 +30,8 @@ export const submissions = mysqlTable(
 export const submissionRoutes = mysqlTable(
   'submission_routes',
   {
-    submissionId: char('submission_id', { length: 36 }).notNull(),
-    routeId: char('route_id', { length: 36 }).notNull(),
+    submissionId: identifier('submission_id').notNull(),
+    routeId: identifier('route_id').notNull(),
   },
   (table) => [primaryKey({ columns: [table.submissionId, table.routeId] })],
 );
@@ -39,8 +40,8 @@ export const submissionRoutes = mysqlTable(
 export const submissionAuthors = mysqlTable(
   'submission_authors',
   {
-    submissionId: char('submission_id', { length: 36 }).notNull(),
-    personId: char('person_id', { length: 36 }).notNull(),
+    submissionId: identifier('submission_id').notNull(),
+    personId: identifier('person_id').notNull(),
   },
   (table) => [primaryKey({ columns: [table.submissionId, table.personId] })],
 );
@@ -48,11 +49,11 @@ export const submissionAuthors = mysqlTable(
 export const rulings = mysqlTable(
   'rulings',
   {
-    submissionId: char('submission_id', { length: 36 }).notNull(),
-    routeId: char('route_id', { length: 36 }).notNull(),
+    submissionId: identifier('submission_id').notNull(),
+    routeId: identifier('route_id').notNull(),
     assumptionKey: varchar('assumption_key', { length: 80 }).notNull(),
     ruling: jsonColumn('ruling', rulingSchema).notNull(),
-    byPerson: char('by_person', { length: 36 }).notNull(),
+    byPerson: identifier('by_person').notNull(),
     at: datetime('at', { fsp: 3 }).notNull(),
   },
   (table) => [primaryKey({ columns: [table.submissionId, table.routeId, table.assumptionKey] })],
@@ -62,8 +63,8 @@ export const rulings = mysqlTable(
 export const signatures = mysqlTable(
   'signatures',
   {
-    submissionId: char('submission_id', { length: 36 }).notNull(),
-    signerId: char('signer_id', { length: 36 }).notNull(),
+    submissionId: identifier('submission_id').notNull(),
+    signerId: identifier('signer_id').notNull(),
     signerName: varchar('signer_name', { length: 120 }).notNull(),
     meaning: varchar('meaning', { length: 300 }).notNull(),
     snapshotHash: char('snapshot_hash', { length: 64 }).notNull(),

@@ -1,0 +1,33 @@
+import * as z from 'zod';
+import { chainEditSchema } from '../../../shared/api/studies.ts';
+import { chainItemKinds } from '../../../shared/domain/audit-events.ts';
+import type { Draft } from '../../chain/editing/chain-document.ts';
+
+const draftSchema = z.object({
+  edits: z.array(z.object({ kind: z.enum(chainItemKinds), id: z.string(), body: chainEditSchema.shape.body })),
+  expected: z.record(z.string(), z.int()),
+  summaries: z.array(z.string()),
+  reasons: z.record(z.string(), z.string()),
+});
+
+const keyOf = (studyId: string) => `stemma-draft:${studyId}`;
+
+/** What was not saved when this tab last showed the study; null where nothing is left or it cannot be read. */
+export function readDraft(studyId: string): Draft | null {
+  try {
+    const text = sessionStorage.getItem(keyOf(studyId));
+    return text === null ? null : draftSchema.parse(JSON.parse(text));
+  } catch {
+    return null;
+  }
+}
+
+/** Keeps the draft over a reload of this tab; with the storage full or forbidden the draft lives in memory only. */
+export function keepDraft(studyId: string, draft: Draft | null): void {
+  try {
+    if (draft === null) sessionStorage.removeItem(keyOf(studyId));
+    else sessionStorage.setItem(keyOf(studyId), JSON.stringify(draft));
+  } catch {
+    // The guard against leaving still stands.
+  }
+}

@@ -55,14 +55,14 @@ export function reduceSteadyHeating(graph: SensitivityGraph, test: Test, lengthO
     const variance = reduction.summary.covarianceOfMeans[place]?.[place] ?? 0;
     const scatter = graph.input(0, {
       id: `test:${test.id}:${name} scatter`,
-      label: `${name} of “${test.name}”, scatter of the readings`,
+      label: `${called(name)} of “${test.name}”, scatter of the readings`,
       u: Math.sqrt(Math.max(0, variance)),
       degreesOfFreedom: reduction.summary.count - 1,
       group: `test:${test.id}:scatter`,
     });
     const instrument = graph.input(0, {
       id: `test:${test.id}:${name} instrument`,
-      label: `${name} of “${test.name}”, instrument`,
+      label: `${called(name)} of “${test.name}”, instrument`,
       u: standardUncertainty(stated[place] ?? { form: 'exact' }, mean),
       degreesOfFreedom: null,
     });
@@ -138,6 +138,10 @@ function velocityOf(graph: SensitivityGraph, test: Test, flow: Term, length: Ans
   return perSquare
     ? { ok: true, term: graph.product(4 / Math.PI, [perSquare]) }
     : { ok: false, reasons: [`The velocity of “${test.name}” has no finite value.`] };
+}
+
+function called(name: (typeof scatterNames)[number]): string {
+  return name === 'power' ? 'heater power' : name;
 }
 
 function celsius(kelvin: number): string {

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { guessMapping } from '../../shared/readings/guess-mapping.ts';
-import { flowOf, type ReadingsMapping, readReadings } from '../../shared/readings/read-readings.ts';
+import { flowOf, readReadings } from '../../shared/readings/read-readings.ts';
+import type { ReadingsMapping } from '../../shared/readings/readings.ts';
 
 const mapping: ReadingsMapping = {
   delimiter: ',',

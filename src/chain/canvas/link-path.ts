@@ -44,9 +44,13 @@ export function routeLink(source: Point, target: Point, boxes: readonly Box[], r
   for (const y of [(source.y + target.y) / 2, ...channels]) {
     candidates.push([source, { x: out, y: source.y }, { x: out, y }, { x: back, y }, { x: back, y: target.y }, target]);
   }
-  // The stubs at both ends touch their own nodes; only what lies between them counts.
-  const cost = (points: Point[]) =>
-    crossings(points.slice(1, -1), boxes) * 10_000 + lengthOf(points) + points.length * 20;
+  // A link touches its own two nodes at their ports; a few pixels further on, what it meets stands in its way.
+  const free = (points: Point[]) => [
+    { x: source.x + 6, y: source.y },
+    ...points.slice(1, -1),
+    { x: target.x - 6, y: target.y },
+  ];
+  const cost = (points: Point[]) => crossings(free(points), boxes) * 10_000 + lengthOf(points) + points.length * 20;
   return candidates.reduce((best, next) => (cost(next) < cost(best) ? next : best));
 }
 

@@ -111,9 +111,9 @@ function Shown({ study, test }: { readonly study: Study; readonly test: Test }) 
         {readings.error && <ProblemNote error={readings.error} onRetry={() => void readings.refetch()} />}
         {readings.isPending && <Loading what="the readings" />}
         {readings.data && (
-          // biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable by keyboard
           <section
             className="max-h-120 overflow-auto border border-rule bg-surface"
+            // biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable by keyboard
             tabIndex={0}
             aria-label="All readings"
           >

@@ -12,7 +12,7 @@ export type ReadingsProblem = {
   readonly sentence: string;
 };
 
-export const fewestReadings = 5;
+const fewestReadings = 5;
 const mostProblems = 200;
 
 /**

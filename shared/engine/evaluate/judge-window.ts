@@ -47,7 +47,7 @@ export function windowSentence(symbol: string, place: string, value: number, win
     : `${stands}: inside the ${basis} (${range}), but close to its edge.`;
 }
 
-export function rangeWords(window: Window): string {
+function rangeWords(window: Window): string {
   const { min, max } = window;
   if (min === null && max === null) return 'no limits stated';
   if (min === null) return `up to ${formatNumber(max ?? 0)}`;

@@ -1,8 +1,8 @@
 import type * as z from 'zod';
-import type { Endpoint, Reply } from '../../shared/api/endpoint.ts';
-import type { Ability, Actor } from '../../shared/domain/ability.ts';
+import type { Endpoint } from '../../shared/api/endpoint.ts';
 import type { AuditEvent } from '../../shared/domain/audit-events.ts';
-import type { Database, Reader, Transaction } from '../db/database.ts';
+import type { SignedInActor } from '../db/actor.ts';
+import type { Reader, Transaction } from '../db/database.ts';
 import type { Notice } from '../notices/notice.ts';
 
 /** What `main.ts` hands in, so that tests can hand in something else. */
@@ -16,12 +16,9 @@ export type Services = {
   readonly publicAddress: string;
 };
 
-export type SignedInActor = Actor & { readonly email: string; readonly ability: Ability };
-/** Anonymous on endpoints whose access is `public`. */
-export type ActorFor<E extends Endpoint> = E['access'] extends 'signed in' ? SignedInActor : SignedInActor | null;
-
 export type UploadedFile = { readonly name: string; readonly content: Buffer };
 
+/** Anonymous on endpoints whose access is `public`: those have handlers of their own in `features/session`. */
 type Given<E extends Endpoint> = {
   readonly actor: SignedInActor;
   readonly params: z.output<E['params']>;
@@ -64,5 +61,3 @@ export function defineQuery<E extends Endpoint>(endpoint: E, run: QueryHandler<E
 export function defineCommand<E extends Endpoint>(endpoint: E, run: CommandHandler<E>['run']): CommandHandler<E> {
   return { type: 'command', endpoint, run };
 }
-
-export type { Database, Reply };

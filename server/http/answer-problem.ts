@@ -1,0 +1,80 @@
+import type { ErrorRequestHandler, Response } from 'express';
+import multer from 'multer';
+import type { Logger } from 'pino';
+import type * as z from 'zod';
+import type { ProblemBody } from '../../shared/api/problem.ts';
+import { Problem } from './problem.ts';
+
+const lostConnection = new Set([
+  'ECONNREFUSED',
+  'ECONNRESET',
+  'ENOENT',
+  'ETIMEDOUT',
+  'PROTOCOL_CONNECTION_LOST',
+  'PROTOCOL_SEQUENCE_TIMEOUT',
+  'ER_SERVER_SHUTDOWN',
+  'ER_STATEMENT_TIMEOUT',
+  'POOL_CLOSED',
+]);
+
+function isDatabaseAway(error: unknown): boolean {
+  if (typeof error !== 'object' || error === null) return false;
+  if ('code' in error && typeof error.code === 'string' && lostConnection.has(error.code)) return true;
+  return 'cause' in error && isDatabaseAway(error.cause);
+}
+
+/** The refusal that zod's issues amount to, field by field: `body.title` -> sentence. */
+export function invalidInput(error: z.ZodError, part: 'params' | 'query' | 'body'): Problem {
+  const fields: Record<string, string> = {};
+  for (const issue of error.issues) {
+    const path = [part, ...issue.path.map(String)].join('.');
+    fields[path] ??= issue.message;
+  }
+  const [first] = Object.entries(fields);
+  const where = first ? ` ${first[0].replace(/^\w+\.?/, '') || part}: ${first[1]}` : '';
+  return new Problem('invalid', `Something that was sent cannot be used.${where}`, { fields });
+}
+
+export function tooLarge(maxBytes: number): Problem {
+  const megabytes = (maxBytes / 1e6).toLocaleString('en-GB');
+  return new Problem(
+    'too large',
+    `The file is larger than ${megabytes} MB, the most that is taken. Split it or leave out columns that are not needed.`,
+  );
+}
+
+function toProblem(error: unknown, log: Logger): Problem {
+  if (error instanceof Problem) return error;
+  if (error instanceof multer.MulterError) {
+    return new Problem('invalid', 'The upload could not be read: send one file in the field "file".');
+  }
+  if (typeof error === 'object' && error !== null && 'type' in error) {
+    if (error.type === 'entity.too.large') {
+      return new Problem('too large', 'What was sent is larger than 2 MB, the most that is taken at once.');
+    }
+    if (error.type === 'entity.parse.failed' || error.type === 'encoding.unsupported') {
+      return new Problem('invalid', 'What was sent is not readable JSON.');
+    }
+  }
+  if (isDatabaseAway(error)) {
+    log.error({ error }, 'the database does not answer');
+    return new Problem(
+      'unavailable',
+      'The database does not answer, so nothing can be read or saved just now. What you typed is still on the screen; try again in a moment.',
+    );
+  }
+  log.error({ error }, 'unexpected');
+  return new Problem('unexpected', 'Something went wrong on the server. Reload to see what was saved.');
+}
+
+function send(response: Response, problem: Problem): void {
+  response.status(problem.status).json(problem.body satisfies ProblemBody);
+}
+
+/** The last stop of every request that failed: a sentence for the caller, the details for the log. */
+export function answerProblems(log: Logger): ErrorRequestHandler {
+  return (error, _request, response, next) => {
+    if (response.headersSent) return next(error);
+    send(response, toProblem(error, log));
+  };
+}

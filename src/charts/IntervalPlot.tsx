@@ -22,15 +22,22 @@ const right = width - 10;
  * The acceptance limit is a line across; the same numbers stand in the table below.
  */
 export function IntervalPlot({
-  intervals,
+  intervals: given,
   unit,
-  limit,
+  limit: givenLimit,
 }: {
   readonly intervals: readonly Interval[];
   readonly unit: string;
   readonly limit: LimitLine | null;
 }) {
-  if (intervals.length === 0) return null;
+  if (given.length === 0) return null;
+  // One shared power of ten, so that the axis shows plain numbers.
+  const largest = Math.max(...given.map(({ value, u }) => Math.abs(value) + 2 * u));
+  const power = Math.floor(Math.log10(largest || 1));
+  const factor = power >= 5 || power < -2 ? 10 ** power : 1;
+  const intervals = given.map((one) => ({ ...one, value: one.value / factor, u: one.u / factor }));
+  const limit = givenLimit && { ...givenLimit, value: givenLimit.value / factor };
+  const scaled = factor === 1 ? unit || 'dimensionless' : `${plainNumber(factor).replace('1 × ', '')} ${unit}`;
   const ends = intervals.flatMap(({ value, u }) => [value - 2 * u, value + 2 * u]);
   if (limit) ends.push(limit.value);
   const low = Math.min(...ends);
@@ -46,13 +53,13 @@ export function IntervalPlot({
     <figure className="grid gap-1">
       <figcaption className="flex justify-between gap-2 border-b border-rule pb-1">
         <span className="font-semibold">Routes side by side</span>
-        <span className="text-xs text-ink-2">{unit || 'dimensionless'}; thick ± u, thin ± U (k = 2)</span>
+        <span className="text-xs text-ink-2">{scaled}; thick ± u, thin ± U (k = 2)</span>
       </figcaption>
       <svg
         viewBox={`0 0 ${width} ${height + 22}`}
         className="w-full"
         role="img"
-        aria-label={sentence(intervals, unit, limit)}
+        aria-label={sentence(given, unit, givenLimit)}
       >
         {x.ticks(5).map((tick) => (
           <g key={tick}>
@@ -125,7 +132,7 @@ export function IntervalPlot({
       <details>
         <summary className="min-h-7 cursor-pointer text-xs text-ink-2">Show as table</summary>
         <table className="w-full text-xs">
-          <caption className="sr-only">Routes with value and uncertainties, in {unit || '1'}</caption>
+          <caption className="sr-only">Routes with value and uncertainties, in {scaled}</caption>
           <thead>
             <tr className="border-b border-rule text-left">
               <th scope="col">Route</th>

@@ -14,7 +14,7 @@ import {
 import { chainLinks } from '../../../shared/engine/evaluate/chain-links.ts';
 import { useChain } from '../chain-context.ts';
 import { loopOf } from '../editing/connect-choices.ts';
-import { type Layout, nodeHeight, nodeWidth, type Place, placeQuantities, sheetHeight } from '../lanes.ts';
+import { type Layout, lanes, nodeHeight, nodeWidth, type Place, placeQuantities, sheetHeight } from '../lanes.ts';
 import { topologicalOrder } from '../topological-order.ts';
 import { drawLinks, outletY, portY } from './chain-graph.ts';
 import { LinkEdge, type LinkFlowEdge } from './LinkEdge.tsx';
@@ -24,7 +24,11 @@ import { handleCanvasKey } from './use-canvas-keys.ts';
 
 const nodeTypes = { quantity: QuantityNode };
 const edgeTypes = { link: LinkEdge };
-const fitting = { padding: { top: 0.06, bottom: 0.12, left: 0.03, right: 0.03 }, maxZoom: 1 };
+const fitting = { padding: 0.15, maxZoom: 1 };
+/** Room that the frame of the sheet takes on each side, px. */
+const margin = 24;
+/** Below this a value cannot be read; a wider sheet is scrolled instead. */
+const smallestFit = 0.42;
 
 export type ChainCanvasProps = {
   /** Both ends drawn, or only the source: then the person chooses the target. `routeId`: dropped on that port. */
@@ -144,7 +148,19 @@ function Sheet({ onConnect, onRemove, onListLinks, onOpen }: ChainCanvasProps) {
     wrapper.current?.querySelector<HTMLElement>(`[data-quantity="${id}"]`)?.focus({ preventScroll: true });
   }
 
-  const fitAll = useCallback(() => void flow.fitView(fitting), [flow]);
+  // All lanes across, the sheet's head at the top: an empty pilot lane is as telling as a full one.
+  const bottom = Math.max(...nodes.map((node) => node.position.y + (node.height ?? 0)), 0) + 40;
+  const fitAll = useCallback(() => {
+    const box = wrapper.current?.getBoundingClientRect();
+    if (!box) return;
+    const width = lanes.plant.to - lanes.bench.from;
+    const zoom = Math.max(
+      smallestFit,
+      Math.min(1, (box.width - 2 * margin) / width, (box.height - 2 * margin) / bottom),
+    );
+    const left = Math.max(margin, (box.width - width * zoom) / 2);
+    void flow.setViewport({ x: left, y: margin, zoom });
+  }, [flow, bottom]);
 
   // The inspector opens beside the canvas and takes room: what was chosen stays in sight.
   const isNarrow = useStore((store) => store.width);
@@ -213,7 +229,7 @@ function Sheet({ onConnect, onRemove, onListLinks, onOpen }: ChainCanvasProps) {
   return (
     <section
       ref={wrapper}
-      className="chain-canvas relative h-full min-h-0 bg-paper"
+      className="chain-canvas @container relative h-full min-h-0 bg-paper"
       aria-label={`Chain of ${title}`}
       onKeyDown={handleKeyDown}
     >
@@ -254,19 +270,21 @@ function Sheet({ onConnect, onRemove, onListLinks, onOpen }: ChainCanvasProps) {
         zoomOnDoubleClick={false}
         minZoom={0.2}
         maxZoom={2}
-        fitView
-        fitViewOptions={fitting}
+        onInit={() => {
+          fitAll();
+          if (selectedQuantityId) show(selectedQuantityId);
+        }}
         ariaLabelConfig={{
           'node.a11yDescription.default': '',
           'node.a11yDescription.keyboardDisabled': '',
           'edge.a11yDescription.default': '',
         }}
       >
-        <Lanes height={sheetHeight(model, layout)} />
-        <Panel position="bottom-left" className="m-6! hidden md:block">
+        <Lanes height={sheetHeight(model, layout) + 2000} />
+        <Panel position="bottom-left" className="m-6! hidden @3xl:block">
           <LineLegend />
         </Panel>
-        <Panel position="bottom-right" className="m-6! hidden max-w-[60%] lg:block">
+        <Panel position="bottom-right" className="m-6! hidden max-w-[60%] @5xl:block">
           <TitleBlock />
         </Panel>
         <Panel position="top-right" className="m-5!">

@@ -2,7 +2,7 @@ import { BaseEdge, type Edge, EdgeLabelRenderer, type EdgeProps, useStore } from
 import { VerdictMark } from '../../charts/LogWindow.tsx';
 import { originLines } from '../origin.ts';
 import type { LinkDrawing } from './chain-graph.ts';
-import { chamferedPath, middleOf } from './link-path.ts';
+import { chamferedPath, pointAlong } from './link-path.ts';
 
 export type LinkFlowEdge = Edge<{ readonly drawing: LinkDrawing; readonly isSelected: boolean }, 'link'>;
 
@@ -23,7 +23,7 @@ export function LinkEdge({ id, data }: EdgeProps<LinkFlowEdge>) {
   if (!data) return null;
   const { drawing, isSelected } = data;
   const line = originLines[drawing.origin];
-  const middle = middleOf(drawing.points);
+  const middle = pointAlong(drawing.points, drawing.tagAt);
   const broken = drawing.tag?.verdict === 'outside';
   const width = drawing.adopted ? Math.max(3.2, line.width * 1.6) : line.width;
   const end = drawing.points.at(-1) ?? { x: 0, y: 0 };
@@ -41,11 +41,13 @@ export function LinkEdge({ id, data }: EdgeProps<LinkFlowEdge>) {
       {drawing.tag && readable && (
         <EdgeLabelRenderer>
           <span
-            className={`pointer-events-none absolute border bg-paper px-1.5 py-0.5 ${legible ? 'text-xs' : 'text-base'} ${broken ? 'border-bad' : 'border-transparent'}`}
+            className={`pointer-events-none absolute border bg-paper px-1.5 py-0.5 ${legible ? 'text-xs' : 'text-xl'} ${broken ? 'border-bad' : 'border-transparent'}`}
             style={{
               transform: middle.upright
                 ? `translate(12px, -50%) translate(${middle.x}px, ${middle.y}px)`
-                : `translate(-50%, calc(-100% - ${broken ? 14 : 5}px)) translate(${middle.x}px, ${middle.y}px)`,
+                : broken
+                  ? `translate(-50%, 14px) translate(${middle.x}px, ${middle.y}px)`
+                  : `translate(-50%, calc(-100% - 5px)) translate(${middle.x}px, ${middle.y}px)`,
             }}
             aria-hidden="true"
           >

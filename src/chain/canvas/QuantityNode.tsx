@@ -1,7 +1,9 @@
 import { Handle, type Node, type NodeProps, Position, useStore } from 'reactflow';
 import { routeInForce } from '../../../shared/engine/evaluate/upstream.ts';
 import type { Quantity, Route } from '../../../shared/engine/model/study-model.ts';
+import { fromSi, parseUnit } from '../../../shared/engine/quantity/parse-unit.ts';
 import { VerdictMark } from '../../charts/LogWindow.tsx';
+import { plainNumber } from '../../charts/plain-number.ts';
 import { Measured } from '../../ui/Measured.tsx';
 import { StatusMark } from '../../ui/StatusMark.tsx';
 import { Symbol_ } from '../../ui/Symbol.tsx';
@@ -87,6 +89,24 @@ function Port({
   );
 }
 
+/** From afar: the value to three digits in large type. */
+function CardValue({
+  quantity,
+  result,
+}: {
+  readonly quantity: Quantity;
+  readonly result: { readonly value: number; readonly u: number } | null;
+}) {
+  const unit = parseUnit(quantity.unit);
+  if (!result || !unit.ok) return <span className="pt-1.5 text-lg text-ink-2">no value yet</span>;
+  return (
+    <span className="num truncate pt-1.5 text-xl">
+      <b>{plainNumber(fromSi(result.value, unit.unit))}</b> {quantity.unit}
+      )}
+    </span>
+  );
+}
+
 /** A quantity on the sheet: what it is, its value ± U, its state, where it comes from, and a port for each route. */
 export function QuantityNode({ id, data }: NodeProps<QuantityFlowNode>) {
   const { state, evaluation } = useChain();
@@ -123,7 +143,7 @@ export function QuantityNode({ id, data }: NodeProps<QuantityFlowNode>) {
               </span>
             </span>
             <span className="truncate text-sm leading-tight font-semibold">{quantity.name}</span>
-            <span className="flex items-baseline gap-1.5 pt-1 text-sm">
+            <span className="flex flex-wrap items-baseline gap-x-1.5 pt-1 text-xs">
               <span className="text-lg leading-none">
                 <Symbol_ symbol={quantity.symbol} />
               </span>
@@ -144,15 +164,7 @@ export function QuantityNode({ id, data }: NodeProps<QuantityFlowNode>) {
             <span className={`truncate leading-none ${detail === 'dot' ? 'pt-4 text-6xl' : 'pt-1 text-3xl'}`}>
               <Symbol_ symbol={quantity.symbol} />
             </span>
-            {detail === 'card' && (
-              <span className="pt-1.5 text-lg">
-                {result ? (
-                  <Measured value={result.value} u={result.u} unit={quantity.unit} />
-                ) : (
-                  <span className="text-ink-2">no value yet</span>
-                )}
-              </span>
-            )}
+            {detail === 'card' && <CardValue quantity={quantity} result={result} />}
             <span className={`mt-auto self-end pb-1.5 ${detail === 'dot' ? 'text-4xl' : 'text-lg'}`}>
               {status && <StatusMark status={status} />}
             </span>

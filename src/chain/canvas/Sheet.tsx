@@ -29,7 +29,7 @@ export function Lanes({ height }: { readonly height: number }) {
                 <span className="text-lg font-bold tracking-wide uppercase [font-stretch:115%]">
                   {laneNames[scale]}
                 </span>
-                <span className="min-w-0 truncate text-sm text-ink-2">
+                <span className="min-w-0 truncate text-lg text-ink-2">
                   {points.map((point) => point.name).join(' · ')}
                 </span>
               </p>
@@ -46,15 +46,15 @@ export function Frame() {
   const columns = ['1', '2', '3', '4', '5', '6'];
   const rows = ['A', 'B', 'C', 'D'];
   return (
-    <div className="pointer-events-none absolute inset-0 z-[4] border-[14px] border-paper" aria-hidden="true">
-      <div className="absolute -inset-[7px] border border-line" />
+    <div className="pointer-events-none absolute inset-0 z-[4] border-[16px] border-paper" aria-hidden="true">
+      <div className="absolute -inset-[13px] border border-line" />
       <div className="absolute inset-0 border-2 border-rule" />
-      <div className="absolute inset-x-0 -top-[14px] grid grid-cols-6 text-center text-[10px] leading-[14px] text-ink-2">
+      <div className="absolute inset-x-0 -top-[16px] grid grid-cols-6 text-center text-[10px] leading-[16px] text-ink-2">
         {columns.map((column) => (
           <span key={column}>{column}</span>
         ))}
       </div>
-      <div className="absolute inset-y-0 -left-[14px] grid w-[14px] grid-rows-4 items-center text-center text-[10px] text-ink-2">
+      <div className="absolute inset-y-0 -left-[16px] grid w-[16px] grid-rows-4 items-center text-center text-[10px] text-ink-2">
         {rows.map((row) => (
           <span key={row}>{row}</span>
         ))}

@@ -20,6 +20,8 @@ export type LinkDrawing = {
   readonly adopted: boolean;
   readonly crossesLanes: boolean;
   readonly tag: { readonly verdict: Verdict; readonly words: string } | null;
+  /** Where its tag stands, as a part of its longest stretch: neighbours from one source stand apart. */
+  readonly tagAt: number;
   /** The link in a whole sentence. */
   readonly words: string;
 };
@@ -65,6 +67,7 @@ export function drawLinks(
         adopted,
         crossesLanes,
         tag: crossesLanes || tag?.verdict === 'outside' ? tag : null,
+        tagAt: 0.35 + 0.22 * (links.slice(0, rank).filter((other) => other.sourceQuantityId === source.id).length % 3),
         words: `${source.name} feeds ${link.variable} of ${target.name} through ${route.name}${adopted ? ', adopted' : ''}${verdict}`,
       },
     ];

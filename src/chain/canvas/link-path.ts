@@ -36,7 +36,7 @@ export function routeLink(source: Point, target: Point, boxes: readonly Box[], r
   const back = target.x - stub - shift;
   const candidates: Point[][] = [];
   if (back >= out) {
-    for (const x of [back, out, (out + back) / 2]) {
+    for (const x of [out, back, (out + back) / 2]) {
       candidates.push([source, { x, y: source.y }, { x, y: target.y }, target]);
     }
   }
@@ -78,14 +78,15 @@ export function chamferedPath(points: readonly Point[]): string {
   return `${path} L${last.x} ${last.y}`;
 }
 
-/** The middle of the longest stretch, where a tag or a break stands, and whether that stretch is upright. */
-export function middleOf(points: readonly Point[]): Point & { readonly upright: boolean } {
+/** A point on the longest stretch, `part` of its way along, where a tag or a break stands. */
+export function pointAlong(points: readonly Point[], part: number): Point & { readonly upright: boolean } {
   let best = { x: 0, y: 0, upright: false, length: -1 };
   for (let i = 1; i < points.length; i += 1) {
     const a = points[i - 1] as Point;
     const b = points[i] as Point;
     const length = Math.abs(a.x - b.x) + Math.abs(a.y - b.y);
-    if (length > best.length) best = { x: (a.x + b.x) / 2, y: (a.y + b.y) / 2, upright: a.x === b.x, length };
+    if (length > best.length)
+      best = { x: a.x + (b.x - a.x) * part, y: a.y + (b.y - a.y) * part, upright: a.x === b.x, length };
   }
   return best;
 }

@@ -84,22 +84,22 @@ export function Outline({ onOpen }: { readonly onOpen: (id: string) => void }) {
       </label>
       <div className="overflow-x-auto border border-rule bg-surface">
         {/* biome-ignore lint/a11y/noNoninteractiveElementToInteractiveRole: a tree table; its cells take the role of grid cells from it */}
-        <table role="treegrid" aria-label="What the quantity comes from" className="w-full min-w-160 text-sm">
+        <table role="treegrid" aria-label="What the quantity comes from" className="w-full text-sm">
           <thead>
             <tr className="border-b border-rule text-left text-xs text-ink-2">
               <th scope="col" className="px-3 py-2">
                 Quantity and what it comes from
               </th>
-              <th scope="col" className="px-2">
+              <th scope="col" className="px-2 max-md:hidden">
                 Comes from
               </th>
-              <th scope="col" className="px-2">
+              <th scope="col" className="px-2 max-md:hidden">
                 Value ± U (k = 2)
               </th>
-              <th scope="col" className="px-2">
+              <th scope="col" className="px-2 max-md:hidden">
                 Match checks
               </th>
-              <th scope="col" className="px-2">
+              <th scope="col" className="px-2 max-md:hidden">
                 State
               </th>
             </tr>
@@ -188,41 +188,54 @@ function RowCells({
             />
           </svg>
           <Symbol_ symbol={quantity.symbol} />
-          <span className="whitespace-nowrap">{quantity.name}</span>
+          <span className="md:whitespace-nowrap">{quantity.name}</span>
+          {row.seeAbove && (
+            <button
+              type="button"
+              tabIndex={-1}
+              className="min-h-7 whitespace-nowrap text-primary underline"
+              onClick={(event) => {
+                event.stopPropagation();
+                onSeeAbove();
+              }}
+            >
+              see above
+            </button>
+          )}
         </span>
+        {row.seeAbove === null && (
+          <span
+            className="flex flex-wrap gap-x-3 gap-y-1 pb-2 text-xs md:hidden"
+            style={{ paddingInlineStart: (row.level - 1) * 24 + 36 }}
+          >
+            {result && <Measured value={result.value} u={result.u} unit={quantity.unit} />}
+            {tag && <VerdictMark verdict={tag.verdict} words={tag.words} />}
+            {status && <StatusMark status={status} />}
+          </span>
+        )}
       </td>
       {row.seeAbove ? (
-        <td colSpan={4} className="px-2">
-          <button
-            type="button"
-            tabIndex={-1}
-            className="min-h-7 text-primary underline"
-            onClick={(event) => {
-              event.stopPropagation();
-              onSeeAbove();
-            }}
-          >
-            see above
-          </button>
-        </td>
+        <td colSpan={4} className="max-md:hidden" />
       ) : (
         <>
-          <td className="px-2 whitespace-nowrap">{route ? routeKindWords[route.kind] : 'no route in force'}</td>
-          <td className="px-2 whitespace-nowrap">
+          <td className="px-2 max-md:hidden whitespace-nowrap">
+            {route ? routeKindWords[route.kind] : 'no route in force'}
+          </td>
+          <td className="px-2 max-md:hidden whitespace-nowrap">
             {result ? (
               <Measured value={result.value} u={result.u} unit={quantity.unit} />
             ) : (
               <span className="text-ink-2">no value yet</span>
             )}
           </td>
-          <td className="px-2 text-xs">
+          <td className="px-2 max-md:hidden text-xs">
             {tag ? (
               <VerdictMark verdict={tag.verdict} words={tag.words} />
             ) : (
               <span className="text-ink-2">nothing to check</span>
             )}
           </td>
-          <td className="px-2 text-xs">{status && <StatusMark status={status} />}</td>
+          <td className="px-2 max-md:hidden text-xs">{status && <StatusMark status={status} />}</td>
         </>
       )}
     </>

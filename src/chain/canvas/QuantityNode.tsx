@@ -100,9 +100,8 @@ function CardValue({
   const unit = parseUnit(quantity.unit);
   if (!result || !unit.ok) return <span className="pt-1.5 text-lg text-ink-2">no value yet</span>;
   return (
-    <span className="num truncate pt-1.5 text-xl">
+    <span className="num truncate pt-1.5 text-[1.25rem]">
       <b>{plainNumber(fromSi(result.value, unit.unit))}</b> {quantity.unit}
-      )}
     </span>
   );
 }

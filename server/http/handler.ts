@@ -49,8 +49,15 @@ export type CommandHandler<E extends Endpoint = Endpoint> = {
     given: Given<E> & { readonly tx: Transaction; readonly file: UploadedFile | null },
   ) => Promise<CommandResult<E>>;
 };
+/** A write that is not part of the record, such as where nodes stand on the canvas. Says why it is not. */
+export type UnrecordedHandler<E extends Endpoint = Endpoint> = {
+  readonly type: 'unrecorded';
+  readonly endpoint: E;
+  readonly why: string;
+  readonly run: (given: Given<E> & { readonly tx: Transaction }) => Promise<z.input<E['reply']>>;
+};
 // biome-ignore lint/suspicious/noExplicitAny: a list of handlers holds handlers of different endpoints.
-export type Handler = QueryHandler<any> | CommandHandler<any>;
+export type Handler = QueryHandler<any> | CommandHandler<any> | UnrecordedHandler<any>;
 
 /** A read: it is given a `Reader`, which can only select. */
 export function defineQuery<E extends Endpoint>(endpoint: E, run: QueryHandler<E>['run']): QueryHandler<E> {
@@ -60,4 +67,12 @@ export function defineQuery<E extends Endpoint>(endpoint: E, run: QueryHandler<E
 /** A change: runs in one transaction with its log entries and the mails it owes. */
 export function defineCommand<E extends Endpoint>(endpoint: E, run: CommandHandler<E>['run']): CommandHandler<E> {
   return { type: 'command', endpoint, run };
+}
+
+export function defineUnrecorded<E extends Endpoint>(
+  endpoint: E,
+  why: string,
+  run: UnrecordedHandler<E>['run'],
+): UnrecordedHandler<E> {
+  return { type: 'unrecorded', endpoint, why, run };
 }

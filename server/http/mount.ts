@@ -7,7 +7,7 @@ import type { Database } from '../db/database.ts';
 import { invalidInput, tooLarge } from './answer-problem.ts';
 import type { Handler, Services, UploadedFile } from './handler.ts';
 import { Problem } from './problem.ts';
-import { runCommand } from './run-handler.ts';
+import { inTransaction, runCommand } from './run-handler.ts';
 
 type Context = { readonly db: Database; readonly services: Services };
 
@@ -57,6 +57,17 @@ function uploadedBody(request: Request): { body: unknown; file: UploadedFile } {
   }
 }
 
+/** Each handler's own endpoint parsed these; the list forgets which shape belongs to which handler. */
+type Parsed = {
+  readonly actor: SignedInActor;
+  // biome-ignore lint/suspicious/noExplicitAny: see above.
+  readonly params: any;
+  // biome-ignore lint/suspicious/noExplicitAny: see above.
+  readonly query: any;
+  // biome-ignore lint/suspicious/noExplicitAny: see above.
+  readonly body: any;
+};
+
 const expressMethod = { GET: 'get', POST: 'post', PUT: 'put', DELETE: 'delete' } as const;
 
 /** The address and the steps of one endpoint before its handler. */
@@ -70,6 +81,16 @@ export function addRoute(router: Router, endpoint: Endpoint, ...steps: RequestHa
 /** Mounts a list of handlers: identify, parse, run, and pass the reply through its schema, which drops the rest. */
 export function mountHandlers(handlers: readonly Handler[], { db, services }: Context): Router {
   const router = Router();
+  const answer = (handler: Handler, given: Parsed, file: UploadedFile | null) => {
+    switch (handler.type) {
+      case 'query':
+        return handler.run({ ...given, services, reader: db });
+      case 'command':
+        return runCommand(handler, db, services, { ...given, file });
+      case 'unrecorded':
+        return inTransaction(db, (tx) => handler.run({ ...given, services, tx }));
+    }
+  };
   for (const handler of handlers) {
     const { endpoint } = handler;
     addRoute(router, endpoint, async (request, response) => {
@@ -81,11 +102,7 @@ export function mountHandlers(handlers: readonly Handler[], { db, services }: Co
         query: parsePart(endpoint.query, partOf(endpoint.query, request.query), 'query'),
         body: parsePart(endpoint.body, partOf(endpoint.body, upload.body), 'body'),
       };
-      const reply =
-        handler.type === 'query'
-          ? await handler.run({ ...given, services, reader: db })
-          : await runCommand(handler, db, services, { ...given, file: upload.file });
-      response.json(endpoint.reply.parse(reply));
+      response.json(endpoint.reply.parse(await answer(handler, given, upload.file)));
     });
   }
   return router;

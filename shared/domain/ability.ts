@@ -19,11 +19,7 @@ export type Actor = {
   readonly memberships: Readonly<Record<string, StudyRole>>;
 };
 
-type Subjects =
-  | 'Installation'
-  | 'People'
-  | 'Study'
-  | (ForcedSubject<'Study'> & { readonly id: string });
+type Subjects = 'Installation' | 'People' | 'Study' | (ForcedSubject<'Study'> & { readonly id: string });
 export type StudyAction = 'read' | 'edit' | 'submit' | 'rule' | 'sign' | 'comment' | 'verify' | 'manage-members';
 type Actions = StudyAction | 'create' | 'manage-people';
 

@@ -29,7 +29,8 @@ export const rulingSchema = z.object({
 });
 export type Ruling = z.infer<typeof rulingSchema>;
 
-const before = <Shape extends z.ZodType>(shape: Shape) => z.object({ before: shape.nullable(), after: shape.nullable() });
+const before = <Shape extends z.ZodType>(shape: Shape) =>
+  z.object({ before: shape.nullable(), after: shape.nullable() });
 
 /** One item of the chain before and after a change; null before: added, null after: removed. */
 export const chainChangeSchema = z.object({
@@ -112,8 +113,9 @@ export const auditEventSchema = z.discriminatedUnion('event', [
   z.object({
     event: z.literal('person.changed'),
     personId: z.string(),
-    ...before(z.object({ name: z.string(), isAdministrator: z.boolean(), isAuditor: z.boolean(), isActive: z.boolean() }))
-      .shape,
+    ...before(
+      z.object({ name: z.string(), isAdministrator: z.boolean(), isAuditor: z.boolean(), isActive: z.boolean() }),
+    ).shape,
   }),
   z.object({ event: z.literal('person.signed-in'), personId: z.string() }),
   z.object({ event: z.literal('password.set'), personId: z.string() }),

@@ -16,7 +16,7 @@ export const submissions = mysqlTable(
     note: text('note').notNull(),
     submittedBy: identifier('submitted_by').notNull(),
     submittedAt: datetime('submitted_at', { fsp: 3 }).notNull(),
-    /** Canonical JSON (RFC 8785): the very bytes that were hashed. */
+    /** Hashed in its canonical form (RFC 8785), so the hash can be computed again from what is stored. */
     snapshot: jsonColumn('snapshot', snapshotSchema).notNull(),
     snapshotHash: char('snapshot_hash', { length: 64 }).notNull(),
     outcomeBy: identifier('outcome_by'),

@@ -1,23 +1,16 @@
 import { and, count, desc, eq, lt, sql } from 'drizzle-orm';
 import * as z from 'zod';
 import { listLogEntries, verifyLog } from '../../../shared/api/decision-log.ts';
-import { studySubject } from '../../../shared/domain/ability.ts';
 import { auditEventSchema } from '../../../shared/domain/audit-events.ts';
-import type { SignedInActor } from '../../db/actor.ts';
+import { canVerify } from '../../../shared/domain/study-policy.ts';
 import { auditEntry } from '../../db/schema/decision-log.ts';
+import { requireReadable } from '../../db/study-reads.ts';
 import { verifyChain } from '../../db/verify-chain.ts';
 import { defineCommand, defineQuery, type Handler } from '../../http/handler.ts';
-import { Problem } from '../../http/problem.ts';
+import { requireAllowed } from '../../http/problem.ts';
 
 const pageSize = 100;
 const payloadSchema = z.object({ actorName: z.string(), event: auditEventSchema });
-
-/** To somebody who may not read a study it does not exist: the same words as for an id that nothing has. */
-function requireReadable(actor: SignedInActor, studyId: string): void {
-  if (actor.ability.cannot('read', studySubject(studyId))) {
-    throw new Problem('not found', 'There is no such study, or you are not a member of it.');
-  }
-}
 
 /** LIKE takes % and _ for wildcards; the reader means the characters. */
 function literally(text: string): string {
@@ -57,9 +50,7 @@ const listEntriesQuery = defineQuery(listLogEntries, async ({ actor, params, que
 
 const verifyLogCommand = defineCommand(verifyLog, async ({ actor, params, tx, services }) => {
   requireReadable(actor, params.studyId);
-  if (actor.ability.cannot('verify', studySubject(params.studyId))) {
-    throw new Problem('not allowed', 'Only an auditor may verify the decision log.');
-  }
+  requireAllowed(canVerify(actor, params.studyId));
   const { entries, headHash, broken } = await verifyChain(tx, params.studyId);
   return {
     reply: { whole: broken === null, entries, headHash, broken, verifiedAt: services.now().toISOString() },

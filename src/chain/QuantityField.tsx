@@ -99,10 +99,7 @@ export function QuantityField({
     setTouched(true);
     const read = understand(typed.text, typed.uncertaintyText, typed.form, unit);
     onHold?.(read.ok ? null : { text: typed.text, uncertaintyText: typed.uncertaintyText });
-    if (read.ok) {
-      setShown(read.value);
-      onChange(read.value);
-    }
+    if (read.ok) onChange(read.value);
   }
 
   const read = understand(text, uncertaintyText, form, unit);
@@ -111,7 +108,7 @@ export function QuantityField({
   const describedBy = `${id}-echo`;
   return (
     // biome-ignore lint/a11y/useSemanticElements: a fieldset would put its legend before the grid
-    <div role="group" aria-label={label} className="grid gap-1">
+    <div role="group" aria-label={label} className="grid content-start gap-1">
       <div className="grid grid-cols-[minmax(0,1fr)_minmax(0,0.8fr)] gap-2">
         <label htmlFor={`${id}-value`} className="text-xs font-semibold">
           {label} <span className="font-normal text-ink-2">{unit && unit !== '1' ? `(${unit})` : ''}</span>

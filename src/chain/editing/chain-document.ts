@@ -4,34 +4,8 @@ import { chainItemSchema } from '../../../shared/domain/audit-events.ts';
 import type { StudyModel } from '../../../shared/engine/model/study-model.ts';
 import type { Layout } from '../lanes.ts';
 import { applyEdits, changedItems, type ItemBody, type ItemEdit, invertEdits, sameContent } from './chain-edits.ts';
-
-export type EditRequest = { readonly summary: string; readonly reason: string; readonly edits: ChainEdit[] };
-type EditReply = { revision: number; itemRevisions: Record<string, number>; routeStates: Record<string, RouteState> };
-/** `problem` null: no answer came, so whether it was saved is open. */
-export type Sent<T> =
-  | { readonly ok: true; readonly reply: T }
-  | { readonly ok: false; readonly problem: ProblemBody | null };
-
-/** What is not saved yet, kept in the browser so that a reload loses nothing. */
-export type Draft = {
-  readonly edits: readonly ItemEdit[];
-  readonly expected: Readonly<Record<string, number>>;
-  readonly summaries: readonly string[];
-  readonly reasons: Readonly<Record<string, string>>;
-};
-
-export type DocumentPorts = {
-  readonly send: (request: EditRequest) => Promise<Sent<EditReply>>;
-  readonly sendLayout: (layout: Layout) => Promise<Sent<object>>;
-  /** Runs the task after a pause; a second call for the same name before that replaces the first. */
-  readonly later: (name: 'save' | 'layout', task: () => void) => void;
-  readonly now: () => Date;
-  /** Structural errors of a model in words: loops, dangling references, balances that do not add up. */
-  readonly check: (model: StudyModel) => readonly string[];
-  readonly keepDraft: (draft: Draft | null) => void;
-  /** Somebody else changed the study. */
-  readonly onMoved: () => void;
-};
+import type { DocumentPorts, Draft, EditReply } from './document-ports.ts';
+import { frozenItems } from './frozen-items.ts';
 
 export type SaveState =
   | { readonly is: 'saved'; readonly at: Date | null }
@@ -61,6 +35,8 @@ export type ChainState = {
   readonly revision: number;
   readonly routeStates: Readonly<Record<string, RouteState>>;
   readonly reasons: Readonly<Record<string, string>>;
+  /** By id of what lies in an open submission: the name of its target. */
+  readonly frozen: ReadonlyMap<string, string>;
   readonly save: SaveState;
   readonly conflicts: readonly Conflict[];
   readonly undoes: string | null;
@@ -99,6 +75,7 @@ export class ChainDocument {
       revision: study.revision,
       routeStates: study.routeStates,
       reasons: draft?.reasons ?? {},
+      frozen: frozenItems(study),
       save: { is: 'saved', at: null },
       conflicts: [],
       undoes: null,
@@ -133,6 +110,10 @@ export class ChainDocument {
   /** Why the edits may not be made, or null. New errors only: an old one elsewhere does not stop work here. */
   private refusal(edits: readonly ItemEdit[], next: StudyModel): string | null {
     for (const edit of edits) {
+      const target = this.state.frozen.get(edit.id);
+      if (target !== undefined) {
+        return `This is part of the submission of ${target}, which is in review. Withdraw the submission to change it.`;
+      }
       const state = edit.kind === 'route' ? this.state.routeStates[edit.id] : undefined;
       if (state?.status === 'in review')
         return 'This route is in review. Withdraw the submission before you change it.';
@@ -301,9 +282,12 @@ export class ChainDocument {
       else this.itemRevisions[id] = reply.itemRevisions[id] ?? (this.itemRevisions[id] ?? 0) + 1;
     }
     const changedAgain = this.state.model !== sent;
+    const reasons = Object.entries(this.state.reasons).filter(([id]) => !edits.some((edit) => edit.id === id));
     this.set({
       revision: reply.revision,
       routeStates: { ...this.state.routeStates, ...reply.routeStates },
+      // A reason opens a route once; when it is approved again the next change needs its own.
+      reasons: Object.fromEntries(reasons),
       save: changedAgain ? { is: 'waiting' } : { is: 'saved', at: this.ports.now() },
     });
     this.keep();
@@ -370,7 +354,7 @@ export class ChainDocument {
   receive(study: Study): void {
     if (this.sending || this.state.save.is === 'conflict' || study.revision < this.state.revision) return;
     if (study.revision === this.state.revision) {
-      this.set({ routeStates: study.routeStates });
+      this.set({ routeStates: study.routeStates, frozen: frozenItems(study) });
       return;
     }
     const mine = changedItems(this.saved, this.state.model);
@@ -383,6 +367,7 @@ export class ChainDocument {
       model: applyEdits(study.model, mine),
       revision: study.revision,
       routeStates: study.routeStates,
+      frozen: frozenItems(study),
       layout: { ...study.layout, ...this.state.layout },
     });
   }

@@ -17,14 +17,16 @@ import { usersOfPoint } from '../editing/remove-items.ts';
 import { QuantityField } from '../QuantityField.tsx';
 import { Findings } from './Findings.tsx';
 import { ChoiceField, NumberField, Section, smallButton, TextField } from './fields.tsx';
+import { ItemLockNote } from './ItemLockNote.tsx';
+import { useItemLock } from './use-route-edit.ts';
 
 type Change = (part: Partial<OperatingPoint>, field: string) => EditOutcome;
 
 /** An operating point: geometry, fluid, what is entered, and the groups that follow at once. */
 export function PointPanel({ point }: { readonly point: OperatingPoint }) {
-  const { state, document, mayEdit, select } = useChain();
+  const { state, document, select } = useChain();
   const edit = useEdit();
-  const locked = !mayEdit.allowed;
+  const locked = !useItemLock(point.id).allowed;
   const seal = () => document.seal();
   const change: Change = (part, field) =>
     edit(
@@ -36,6 +38,7 @@ export function PointPanel({ point }: { readonly point: OperatingPoint }) {
   return (
     <>
       <p className="text-xs text-ink-2">Operating point at {point.scale} scale</p>
+      <ItemLockNote id={point.id} />
       <Findings kind="operating-point" id={point.id} />
       <Section title="Groups that follow">
         <Readings point={point} />

@@ -17,6 +17,8 @@ import { verdictTag } from '../verdict-words.ts';
 import { AddRoute } from './AddRoute.tsx';
 import { Findings } from './Findings.tsx';
 import { ChoiceField, Section, smallButton, TextField } from './fields.tsx';
+import { ItemLockNote } from './ItemLockNote.tsx';
+import { useItemLock } from './use-route-edit.ts';
 
 /** One quantity: its number, the routes to it side by side, what its uncertainty is made of, and its definition. */
 export function QuantityPanel({
@@ -27,6 +29,7 @@ export function QuantityPanel({
   readonly onRemove: (id: string) => void;
 }) {
   const { evaluation, state, mayEdit, select } = useChain();
+  const lock = useItemLock(quantity.id);
   const result = evaluation.quantities[quantity.id]?.result ?? null;
   const point = state.model.operatingPoints.find((one) => one.id === quantity.operatingPointId);
   return (
@@ -52,13 +55,14 @@ export function QuantityPanel({
         )}
         {result && quantity.limit && <LimitLine quantity={quantity} value={result.value} u={result.u} />}
       </div>
+      <ItemLockNote id={quantity.id} />
       <Findings kind="quantity" id={quantity.id} />
       <Routes quantity={quantity} />
       {mayEdit.allowed && <AddRoute key={quantity.id} quantity={quantity} />}
       <SideBySide quantity={quantity} />
       {result && <BudgetBars result={result} unit="SI" />}
       <Definition quantity={quantity} />
-      {mayEdit.allowed && (
+      {lock.allowed && (
         <p>
           <button type="button" className={`${smallButton} text-bad`} onClick={() => onRemove(quantity.id)}>
             Remove this quantity
@@ -99,7 +103,8 @@ function LimitLine({
 }
 
 function Routes({ quantity }: { readonly quantity: Quantity }) {
-  const { state, evaluation, mayEdit, select } = useChain();
+  const { state, evaluation, select } = useChain();
+  const lock = useItemLock(quantity.id);
   const edit = useEdit();
   const routes = state.model.routes.filter((route) => route.quantityId === quantity.id);
   if (routes.length === 0) return null;
@@ -151,7 +156,7 @@ function Routes({ quantity }: { readonly quantity: Quantity }) {
                 {adopted ? (
                   <span className="font-semibold text-primary">adopted</span>
                 ) : (
-                  mayEdit.allowed && (
+                  lock.allowed && (
                     <button
                       type="button"
                       className={smallButton}
@@ -199,9 +204,9 @@ function SideBySide({ quantity }: { readonly quantity: Quantity }) {
 }
 
 function Definition({ quantity }: { readonly quantity: Quantity }) {
-  const { state, document, mayEdit } = useChain();
+  const { state, document } = useChain();
   const edit = useEdit();
-  const locked = !mayEdit.allowed;
+  const locked = !useItemLock(quantity.id).allowed;
   const change = (part: Partial<Quantity>, field: string): EditOutcome =>
     edit(
       [{ kind: 'quantity', id: quantity.id, body: { ...quantity, ...part } }],

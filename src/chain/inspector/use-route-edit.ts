@@ -4,11 +4,24 @@ import type { Route } from '../../../shared/engine/model/study-model.ts';
 import { useChain, useEdit } from '../chain-context.ts';
 import type { EditOutcome } from '../editing/chain-document.ts';
 
-/** Whether a route may be changed now, with the reason where not. */
-export function useRouteLock(route: Route): Decision {
+/** Whether an item may be changed now: the person may, and no open submission rests on it. */
+export function useItemLock(id: string): Decision {
   const { state, mayEdit } = useChain();
-  const known = state.routeStates[route.id];
+  const target = state.frozen.get(id);
   if (!mayEdit.allowed) return mayEdit;
+  return target === undefined
+    ? allowed
+    : denied(
+        `Part of the submission of ${target}, which is in review: what is being judged must not change. Withdraw the submission to change it.`,
+      );
+}
+
+/** Whether a route may be changed now; an approved one opens with a reason. */
+export function useRouteLock(route: Route): Decision {
+  const { state } = useChain();
+  const lock = useItemLock(route.id);
+  const known = state.routeStates[route.id];
+  if (!lock.allowed) return lock;
   if (known?.status === 'in review') {
     return denied(
       'This route is in review: what is being judged must not change. Withdraw the submission to change it.',

@@ -2,8 +2,8 @@ import { useQuery } from '@tanstack/react-query';
 import { useMemo, useState } from 'react';
 import { useParams } from 'react-router-dom';
 import type { Study } from '../../../shared/api/studies.ts';
-import { abilityOf, studySubject } from '../../../shared/domain/ability.ts';
-import { allowed, denied } from '../../../shared/domain/decision.ts';
+import { abilityOf } from '../../../shared/domain/ability.ts';
+import { canEdit } from '../../../shared/domain/study-policy.ts';
 import { evaluateStudy } from '../../../shared/engine/evaluate/evaluate-study.ts';
 import { useActor } from '../../api/session.ts';
 import { ChainProvider, type HeldText } from '../../chain/chain-context.ts';
@@ -30,13 +30,7 @@ function OpenStudy({ study }: { readonly study: Study }) {
   const [notice, setNotice] = useState<{ readonly text: string; readonly count: number } | null>(null);
   const [held] = useState(() => new Map<string, HeldText>());
   const evaluation = useMemo(() => evaluateStudy(state.model), [state.model]);
-  const mayEdit = useMemo(
-    () =>
-      abilityOf(actor).can('edit', studySubject(study.id))
-        ? allowed
-        : denied('You read this study; its scale-up engineers edit it.'),
-    [actor, study.id],
-  );
+  const mayEdit = useMemo(() => canEdit({ ...actor, ability: abilityOf(actor) }, study.id), [actor, study.id]);
   const context = useMemo(
     () => ({
       studyId: study.id,

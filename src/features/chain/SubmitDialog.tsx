@@ -6,6 +6,7 @@ import { call } from '../../api/call.ts';
 import { paths } from '../../api/paths.ts';
 import { useChain } from '../../chain/chain-context.ts';
 import { routeStatus } from '../../chain/describe-quantity.ts';
+import { findItem } from '../../chain/editing/chain-edits.ts';
 import { targets } from '../../chain/outline/outline-rows.ts';
 import { Button } from '../../ui/Button.tsx';
 import { Dialog } from '../../ui/Dialog.tsx';
@@ -97,7 +98,9 @@ export function SubmitDialog({ preset, onClose }: { readonly preset: string | nu
               );
             })}
           </ul>
-          {ready.routeIds.length === 0 && <p className="text-sm text-ink-2">No route leads to this quantity yet.</p>}
+          {ready.routeIds.length === 0 && (
+            <p className="text-sm text-ink-2">Nothing to judge: no route leads here, or all are approved.</p>
+          )}
         </section>
         {obstacles.length > 0 && (
           <section className="grid gap-1" aria-labelledby={`${id}-missing`}>
@@ -111,14 +114,16 @@ export function SubmitDialog({ preset, onClose }: { readonly preset: string | nu
                   className="flex items-start justify-between gap-3 border-l-4 border-bad pl-3 text-sm"
                 >
                   {obstacle.sentence}
-                  <Button
-                    onClick={() => {
-                      select(obstacle.subjectId);
-                      onClose();
-                    }}
-                  >
-                    Mend it
-                  </Button>
+                  {findItem(state.model, obstacle.subjectId) && (
+                    <Button
+                      onClick={() => {
+                        select(obstacle.subjectId);
+                        onClose();
+                      }}
+                    >
+                      Mend it
+                    </Button>
+                  )}
                 </li>
               ))}
             </ul>

@@ -1,5 +1,6 @@
 import { Link } from 'react-router-dom';
-import { abilityOf, studySubject } from '../../../shared/domain/ability.ts';
+import { abilityOf } from '../../../shared/domain/ability.ts';
+import { canSubmit } from '../../../shared/domain/submission-policy.ts';
 import { paths } from '../../api/paths.ts';
 import { useActor } from '../../api/session.ts';
 import { useChain } from '../../chain/chain-context.ts';
@@ -27,7 +28,7 @@ export function Toolbar({
 }) {
   const { title, state, document, studyId, mayEdit } = useChain();
   const actor = useActor();
-  const maySubmit = abilityOf(actor).can('submit', studySubject(studyId));
+  const maySubmit = canSubmit({ ...actor, ability: abilityOf(actor) }, studyId).allowed;
   return (
     <header className="flex flex-wrap items-center gap-x-3 gap-y-1 border-b-2 border-rule bg-surface px-4 py-1.5 print:hidden">
       <h1 className="mr-2 max-w-full min-w-0 truncate text-base leading-tight font-bold">{title}</h1>

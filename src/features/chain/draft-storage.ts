@@ -1,7 +1,7 @@
 import * as z from 'zod';
 import { chainEditSchema } from '../../../shared/api/studies.ts';
 import { chainItemKinds } from '../../../shared/domain/audit-events.ts';
-import type { Draft } from '../../chain/editing/chain-document.ts';
+import type { Draft } from '../../chain/editing/document-ports.ts';
 
 const draftSchema = z.object({
   edits: z.array(z.object({ kind: z.enum(chainItemKinds), id: z.string(), body: chainEditSchema.shape.body })),

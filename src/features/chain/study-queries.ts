@@ -3,7 +3,7 @@ import type { ProblemBody } from '../../../shared/api/problem.ts';
 import { getStudy } from '../../../shared/api/studies.ts';
 import { call } from '../../api/call.ts';
 import { CallError } from '../../api/call-error.ts';
-import type { Sent } from '../../chain/editing/chain-document.ts';
+import type { Sent } from '../../chain/editing/document-ports.ts';
 
 /** Never from the cache of an earlier visit: the document on screen would start from old revisions. */
 export const studyQuery = (studyId: string) =>

@@ -5,7 +5,7 @@ import type { ChainState } from '../../chain/editing/chain-document.ts';
 
 export type Obstacle = { readonly sentence: string; readonly subjectId: string };
 export type Readiness = {
-  /** Routes that the package covers, upstream first. */
+  /** Routes that are judged, upstream first: all that are not approved on the basis they have now. */
   readonly routeIds: readonly string[];
   readonly obstacles: readonly Obstacle[];
 };
@@ -18,7 +18,9 @@ export function submissionReadiness(
   targetId: string,
 ): Readiness {
   const upstream = upstreamOf(model, targetId);
-  const covered = new Set(upstream.routeIds);
+  const covered = new Set(
+    upstream.routeIds.filter((id) => routeStates[id]?.status !== 'approved' || routeStates[id]?.basisChanged),
+  );
   const subjects = new Set([
     ...upstream.quantityIds,
     ...upstream.routeIds,
@@ -50,5 +52,5 @@ export function submissionReadiness(
       }
     }
   }
-  return { routeIds: [...upstream.routeIds].reverse(), obstacles };
+  return { routeIds: [...covered].reverse(), obstacles };
 }

@@ -1,14 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import type { ProblemBody } from '../../../shared/api/problem.ts';
 import type { Quantity } from '../../../shared/engine/model/study-model.ts';
-import {
-  ChainDocument,
-  type DocumentPorts,
-  type Draft,
-  type EditRequest,
-  type Sent,
-} from '../../../src/chain/editing/chain-document.ts';
+import { ChainDocument } from '../../../src/chain/editing/chain-document.ts';
 import { conflictFields, mergeConflict } from '../../../src/chain/editing/conflict-fields.ts';
+import type { DocumentPorts, Draft, EditRequest, Sent } from '../../../src/chain/editing/document-ports.ts';
 import { removeQuantity } from '../../../src/chain/editing/remove-items.ts';
 import { analogueChain, ids, studyOf } from './analogue-chain.ts';
 
@@ -267,5 +262,27 @@ describe('an approved route', () => {
     pause();
 
     expect(sent[0]).toMatchObject({ reason: 'New data of the rig.', edits: [{ id: ids.kRoute }] });
+  });
+});
+
+describe('what an open submission rests on', () => {
+  it('is locked at once, upstream included, and the refusal names the submission', () => {
+    const { document, state } = desk();
+    const submission = {
+      id: 's',
+      targetQuantityId: ids.k,
+      targetName: 'k_w',
+      status: 'open' as const,
+      submittedByName: 'E',
+      submittedAt: '2026-03-04T09:12:00Z',
+    };
+    document.receive({ ...studyOf(analogueChain), submissions: [submission] });
+
+    const h = analogueChain.quantities.find((one) => one.id === ids.h) as Quantity;
+    const outcome = document.edit([{ kind: 'quantity', id: h.id, body: { ...h, note: 'later' } }], 'Changed the note');
+
+    expect(outcome).toMatchObject({ ok: false, sentence: expect.stringContaining('submission of k_w') });
+    expect(state().frozen.has(ids.time)).toBe(false);
+    expect(document.edit(rename('Free'), 'Changed the name').ok).toBe(true);
   });
 });

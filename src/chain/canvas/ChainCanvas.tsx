@@ -248,7 +248,9 @@ function Sheet({ onConnect, onRemove, onListLinks, onOpen }: ChainCanvasProps) {
           const before = settled[node.id];
           if (before && (before.x !== node.position.x || before.y !== node.position.y)) move(node.id, node.position);
         }}
-        onNodeClick={(_, node) => {
+        onNodeClick={(event, node) => {
+          // A port is for linking; opening the inspector would move the sheet between its two clicks.
+          if (event.target instanceof Element && event.target.closest('.react-flow__handle')) return;
           setActiveId(node.id);
           select(node.id);
         }}

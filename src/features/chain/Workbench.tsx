@@ -126,7 +126,7 @@ export function Workbench({
       <div
         className={`grid min-h-0 flex-1 ${isOpen ? 'md:grid-cols-[minmax(0,1fr)_24rem] xl:grid-cols-[minmax(0,1fr)_27rem] print:grid-cols-1' : ''}`}
       >
-        <div ref={stage} className="min-h-0 overflow-hidden max-md:min-h-[60vh]">
+        <div ref={stage} className={`min-h-0 overflow-hidden ${view === 'canvas' ? 'max-md:h-[60vh]' : ''}`}>
           {isEmpty && <EmptyChain />}
           {!isEmpty && view === 'canvas' && (
             <ChainCanvas

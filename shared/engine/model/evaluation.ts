@@ -85,7 +85,9 @@ export const routeResultSchema = z.object({
   /** Null where something stops it; the findings say what. */
   result: measuredResultSchema.nullable(),
   /** Named steps between the inputs and the result, e.g. Nu, Re, Sc, Sh. */
-  steps: z.array(z.object({ symbol: z.string(), meaning: z.string(), value: z.number(), u: z.number(), unit: z.string() })),
+  steps: z.array(
+    z.object({ symbol: z.string(), meaning: z.string(), value: z.number(), u: z.number(), unit: z.string() }),
+  ),
   checks: z.array(matchCheckSchema),
   assumptions: z.array(assumptionSchema),
 });
@@ -102,7 +104,10 @@ export const pointReadingSchema = z.object({
 export const studyEvaluationSchema = z.object({
   engineVersion: z.string(),
   /** By quantity id: the adopted route's result; with one route and nothing adopted, that route's; else null. */
-  quantities: z.record(z.string(), z.object({ routeId: z.string().nullable(), result: measuredResultSchema.nullable() })),
+  quantities: z.record(
+    z.string(),
+    z.object({ routeId: z.string().nullable(), result: measuredResultSchema.nullable() }),
+  ),
   routes: z.record(z.string(), routeResultSchema),
   points: z.record(z.string(), z.array(pointReadingSchema)),
   tests: z.record(

@@ -43,7 +43,20 @@ export type Scale = (typeof scales)[number];
 
 /** What may be entered at an operating point. Units and meanings: `point-variables.ts`. */
 export const pointVariableKeys = [
-  'L', 'u', 'T', 'rho', 'mu', 'nu', 'cp', 'lambda', 'D', 'beta', 'dT', 'Re', 'Pr', 'Sc',
+  'L',
+  'u',
+  'T',
+  'rho',
+  'mu',
+  'nu',
+  'cp',
+  'lambda',
+  'D',
+  'beta',
+  'dT',
+  'Re',
+  'Pr',
+  'Sc',
 ] as const;
 export type PointVariableKey = (typeof pointVariableKeys)[number];
 /** Everything that can be read from an operating point: entered variables and the groups that follow from them. */
@@ -51,7 +64,14 @@ export const pointGroupKeys = ['nu', 'Re', 'Pr', 'Sc', 'Gr', 'GrRe2'] as const;
 export const pointReadingKeys = [...new Set([...pointVariableKeys, ...pointGroupKeys])] as [string, ...string[]];
 
 export const geometryFamilies = [
-  'tube', 'cylinder in crossflow', 'flat plate', 'sphere', 'packed bed', 'stirred vessel', 'rotating cylinder', 'other',
+  'tube',
+  'cylinder in crossflow',
+  'flat plate',
+  'sphere',
+  'packed bed',
+  'stirred vessel',
+  'rotating cylinder',
+  'other',
 ] as const;
 export type GeometryFamily = (typeof geometryFamilies)[number];
 

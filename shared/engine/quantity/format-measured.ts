@@ -5,7 +5,9 @@ const MINUS = '−';
 const THIN_GAP = '\u00a0';
 
 function raised(exponent: number): string {
-  return String(exponent).replace('-', '⁻').replace(/\d/g, (digit) => superscripts[Number(digit)] ?? digit);
+  return String(exponent)
+    .replace('-', '⁻')
+    .replace(/\d/g, (digit) => superscripts[Number(digit)] ?? digit);
 }
 
 /** Fixed decimals with a true minus and no negative zero. */
@@ -74,7 +76,10 @@ export function formatMeasured(value: number, u: number, unit: string, k = 2): F
   const mantissa = fixed(shownValue * scale, decimals);
   const expanded = fixed(shownU * scale, decimals);
   const pair = `${mantissa} ± ${expanded}`;
-  const text = exponent === null && after === '' ? pair : `(${pair})${exponent === null ? '' : ` × 10${raised(exponent)}`}${after}`;
+  const text =
+    exponent === null && after === ''
+      ? pair
+      : `(${pair})${exponent === null ? '' : ` × 10${raised(exponent)}`}${after}`;
   return { mantissa, expanded, exponent, unit: shownUnit, text };
 }
 

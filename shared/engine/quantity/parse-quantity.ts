@@ -23,7 +23,8 @@ function unitFor(typed: string, shownUnit: string): UnitOf {
   const own = parseUnit(typed);
   if (!own.ok) return own;
   if (!sameDimension(own.unit.dimension, shown.unit.dimension)) {
-    const wanted = shownUnit === '' || shownUnit === '1' ? 'a number without a unit' : `a unit of the kind ${shownUnit}`;
+    const wanted =
+      shownUnit === '' || shownUnit === '1' ? 'a number without a unit' : `a unit of the kind ${shownUnit}`;
     return { ok: false, reason: `"${typed}" is ${describeDimension(own.unit.dimension)}; this takes ${wanted}.` };
   }
   return own;
@@ -67,7 +68,8 @@ export function parseUncertainty(
   const isRelative = typed.rest === '%' && isNotInPercent(shownUnit);
 
   if (form === 'relative') {
-    if (typed.rest !== '%' && typed.rest !== '') return { ok: false, reason: 'Enter a relative uncertainty in per cent, for example 3 %.' };
+    if (typed.rest !== '%' && typed.rest !== '')
+      return { ok: false, reason: 'Enter a relative uncertainty in per cent, for example 3 %.' };
     return { ok: true, uncertainty: { form, fraction: typed.value / 100 } };
   }
   const unit = isRelative ? null : unitFor(typed.rest, shownUnit);

@@ -1,4 +1,4 @@
-import { create, type MathJsInstance, unitDependencies } from 'mathjs';
+import { create, type FactoryFunctionMap, type MathJsInstance, unitDependencies } from 'mathjs';
 
 /** Exponents of m, kg, s, A, K, mol, cd. */
 export type Dimension = readonly number[];
@@ -14,7 +14,7 @@ export type Unit = {
 export type UnitReading = { readonly ok: true; readonly unit: Unit } | { readonly ok: false; readonly reason: string };
 
 // An instance of our own: nobody else can change its configuration or units.
-const math = create({ unitDependencies }) as MathJsInstance;
+const math = create({ unitDependencies } as FactoryFunctionMap) as MathJsInstance;
 
 /** mathjs lists mass, length, time, current, temperature, luminous intensity, amount, angle, bit. */
 const placeInMathjs = [1, 0, 2, 3, 4, 6, 5] as const;

@@ -10,7 +10,10 @@ const pattern = new RegExp(
 );
 
 function fromSuperscript(text: string): string {
-  return text.replace('⁻', '-').replace('⁺', '').replace(/[⁰¹²³⁴⁵⁶⁷⁸⁹]/g, (digit) => String(digits.indexOf(digit)));
+  return text
+    .replace('⁻', '-')
+    .replace('⁺', '')
+    .replace(/[⁰¹²³⁴⁵⁶⁷⁸⁹]/g, (digit) => String(digits.indexOf(digit)));
 }
 
 /** The decimal separator of a plain number: the last of two kinds, or the only one where it cannot mean thousands. */

@@ -28,7 +28,7 @@ export function BalanceFields({ route, locked }: RouteFieldsProps<'balance'>) {
           return change({ expression, bindings: bindingsFor(read.formula.variables, route.bindings) }, 'the formula');
         }}
       />
-      {formula.ok && <Formula text={route.expression} />}
+      {formula.ok && <Formula result={quantity?.symbol ?? ''} text={route.expression} />}
       {Object.entries(route.bindings).map(([symbol, binding]) => (
         <BindingField
           key={symbol}

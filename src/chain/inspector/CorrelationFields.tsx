@@ -62,16 +62,26 @@ export function CorrelationFields({ route, locked }: RouteFieldsProps<'correlati
       />
       {method && (
         <>
-          <Formula text={`${method.result.symbol} = ${method.expression}`} />
+          <Formula result={method.result.symbol} text={method.expression} />
           <dl className="grid grid-cols-[6rem_minmax(0,1fr)] gap-x-3 gap-y-1 text-xs">
             <dt className="text-ink-2">Window</dt>
             <dd>{method.window.length === 0 ? 'none stated' : method.window.map(windowWords).join('; ')}</dd>
+            <dt className="text-ink-2">Length</dt>
+            <dd>{method.length}</dd>
+            <dt className="text-ink-2">Properties at</dt>
+            <dd>{method.temperature}</dd>
             <dt className="text-ink-2">Scatter</dt>
             <dd>
               {plainNumber(method.scatter.relative * 100)} %, {method.scatter.reading}, from {method.scatter.from}
             </dd>
             <dt className="text-ink-2">Source</dt>
             <dd>{method.source}</dd>
+            {method.pitfalls.length > 0 && (
+              <>
+                <dt className="text-ink-2">Mind</dt>
+                <dd>{method.pitfalls.join('; ')}</dd>
+              </>
+            )}
             <dt className="text-ink-2">Entry is</dt>
             <dd className={method.status === 'from memory' ? 'font-semibold text-warn' : ''}>
               {methodStatusWords[method.status]}

@@ -7,11 +7,11 @@ export type Layout = Readonly<Record<string, Place>>;
 /** The zones of the sheet, left to right. A link from one to another is a scale-up step. */
 export const lanes: Record<Scale, { readonly from: number; readonly to: number; readonly columns: readonly number[] }> =
   {
-    bench: { from: 0, to: 640, columns: [40, 350] },
-    pilot: { from: 640, to: 1040, columns: [715] },
-    plant: { from: 1040, to: 1760, columns: [1090, 1450] },
+    bench: { from: 0, to: 640, columns: [25, 350] },
+    pilot: { from: 640, to: 1040, columns: [705] },
+    plant: { from: 1040, to: 1760, columns: [1075, 1440] },
   };
-export const nodeWidth = 250;
+export const nodeWidth = 270;
 const firstRow = 70;
 const gap = 40;
 

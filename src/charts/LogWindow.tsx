@@ -39,9 +39,19 @@ export function VerdictMark({ verdict, words }: { readonly verdict: Verdict; rea
   );
 }
 
+/** The window in the unit of the axis: for a match it is one of the ratio, so it stands around the source. */
+function shownWindow(check: MatchCheck): { readonly min: number | null; readonly max: number | null } | null {
+  if (!check.window) return null;
+  if (check.kind !== 'match') return check.window;
+  if (check.source === null) return null;
+  const { min, max } = check.window;
+  return { min: min === null ? null : min * check.source, max: max === null ? null : max * check.source };
+}
+
 /** Decades around everything the axis must show; null where a logarithm has no meaning. */
 export function logDomain(check: MatchCheck): [number, number] | null {
-  const marks = [check.source, check.target, check.window?.min ?? null, check.window?.max ?? null].filter(
+  const window = shownWindow(check);
+  const marks = [check.source, check.target, window?.min ?? null, window?.max ?? null].filter(
     (x): x is number => x !== null && Number.isFinite(x) && x > 0,
   );
   const shown = [check.source, check.target].filter((x) => x !== null);
@@ -51,8 +61,15 @@ export function logDomain(check: MatchCheck): [number, number] | null {
   return [low, high];
 }
 
+const noWindowWords: Record<MatchCheck['kind'], string> = {
+  match: 'equal at both ends',
+  geometry: 'equal at both ends',
+  regime: 'the same regime at both ends',
+  window: 'no window stated',
+};
+
 function windowWords(check: MatchCheck): string {
-  if (!check.window) return check.kind === 'match' ? 'should be equal at both ends' : 'no window stated';
+  if (!check.window) return noWindowWords[check.kind];
   const { min, max, basis } = check.window;
   const range =
     min !== null && max !== null
@@ -62,7 +79,7 @@ function windowWords(check: MatchCheck): string {
         : max !== null
           ? `at most ${plainNumber(max)}`
           : 'no limits';
-  return `window ${range}, ${basis}`;
+  return `${check.kind === 'match' ? 'ratio' : 'window'} ${range}, ${basis}`;
 }
 
 function Axis({ check, domain }: { readonly check: MatchCheck; readonly domain: [number, number] }) {
@@ -72,8 +89,9 @@ function Axis({ check, domain }: { readonly check: MatchCheck; readonly domain: 
     { length: Math.max(0, Math.floor(Math.log10(domain[1])) - firstDecade + 1) },
     (_, i) => 10 ** (firstDecade + i),
   );
-  const from = check.window ? x(Math.max(check.window.min ?? domain[0], domain[0])) : null;
-  const to = check.window ? x(Math.min(check.window.max ?? domain[1], domain[1])) : null;
+  const window = shownWindow(check);
+  const from = window ? x(Math.max(window.min ?? domain[0], domain[0])) : null;
+  const to = window ? x(Math.min(window.max ?? domain[1], domain[1])) : null;
   const source = check.source === null ? null : x(check.source);
   const target = check.target === null ? null : x(check.target);
   return (

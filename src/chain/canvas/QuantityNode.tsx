@@ -72,7 +72,7 @@ function Port({
             {route.name}
             {inForce && <span className="sr-only"> (in force)</span>}
           </span>
-          {tag && <VerdictMark verdict={tag.verdict} words={tag.words} />}
+          {tag && <VerdictMark verdict={tag.verdict} words={tag.short} />}
         </>
       )}
       {detail === 'card' && (
@@ -141,8 +141,8 @@ export function QuantityNode({ id, data }: NodeProps<QuantityFlowNode>) {
                 {inForce ? routeKindWords[inForce.kind] : routes.length > 1 ? 'none adopted' : 'no route'}
               </span>
             </span>
-            <span className="truncate text-sm leading-tight font-semibold">{quantity.name}</span>
-            <span className="flex flex-wrap items-baseline gap-x-1.5 pt-1 text-xs">
+            <span className="shrink-0 truncate text-sm leading-tight font-semibold">{quantity.name}</span>
+            <span className="flex flex-wrap items-baseline gap-x-1 pt-1 text-xs">
               <span className="text-lg leading-none">
                 <Symbol_ symbol={quantity.symbol} />
               </span>

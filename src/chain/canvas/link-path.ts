@@ -35,8 +35,8 @@ export function routeLink(source: Point, target: Point, boxes: readonly Box[], r
   const out = source.x + stub + shift;
   const back = target.x - stub - shift;
   const candidates: Point[][] = [];
-  if (back >= out) {
-    for (const x of [out, back, (out + back) / 2]) {
+  if (target.x - source.x >= 28) {
+    for (const x of back >= out ? [out, back, (out + back) / 2] : [(source.x + target.x) / 2]) {
       candidates.push([source, { x, y: source.y }, { x, y: target.y }, target]);
     }
   }

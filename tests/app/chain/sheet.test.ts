@@ -111,7 +111,14 @@ describe('the tag on a link', () => {
     const far = check({ key: 'window:Re', kind: 'window', target: 88_900, window, verdict: 'outside' });
 
     expect(verdictTag([check({}), check({ key: 'b' })])?.words).toBe('2 of 2 inside');
-    expect(verdictTag([check({}), far])).toEqual({ verdict: 'outside', words: 'Re 1.27× outside' });
+    expect(verdictTag([check({}), far])).toMatchObject({ verdict: 'outside', words: 'Re 1.27× outside' });
+    const unmatched = check({
+      target: 2e4,
+      ratio: 2,
+      window: { min: 0.8, max: 1.25, basis: 'indicative' },
+      verdict: 'outside',
+    });
+    expect(verdictTag([unmatched, far])).toMatchObject({ words: 'Re 2×, 2 of 2 outside', short: '2 of 2 outside' });
     expect(verdictTag([])).toBeNull();
   });
 });

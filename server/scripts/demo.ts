@@ -1,8 +1,8 @@
 import { openDatabase } from '../db/database.ts';
 import { people } from '../db/schema/people.ts';
-import { seedDemo } from '../db/seed.ts';
 import type { LauncherEnvironment } from '../environment.ts';
 import type { DatabaseServer } from './database.ts';
+import { seedDemo } from './demo/seed-demo.ts';
 
 /** Fills an installation that has no people yet with the demo; leaves any other as it is. */
 export async function seedDemoOnce(

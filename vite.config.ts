@@ -4,6 +4,8 @@ import { defineConfig } from 'vitest/config';
 
 export default defineConfig({
   plugins: [react(), tailwindcss()],
+  // Replaced by a fresh nonce in every answer; see server/http/pages.ts.
+  html: { cspNonce: 'STEMMA-NONCE' },
   build: {
     outDir: 'dist',
     // The content security policy allows neither inline scripts nor data: fonts.

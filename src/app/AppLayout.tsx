@@ -1,0 +1,122 @@
+import { useMutation, useQueryClient } from '@tanstack/react-query';
+import { useEffect, useState } from 'react';
+import { Navigate, NavLink, Outlet, useLocation, useNavigate } from 'react-router-dom';
+import { signOut } from '../../shared/api/session.ts';
+import { call, onSignedOut } from '../api/call.ts';
+import { paths } from '../api/paths.ts';
+import { ActorProvider, type SessionActor, sessionQuery, useSession } from '../api/session.ts';
+import { Loading } from '../ui/Loading.tsx';
+import { ProblemNote } from '../ui/ProblemNote.tsx';
+import { SetupNeeded } from './SetupNeeded.tsx';
+import { ThemeChoice } from './ThemeChoice.tsx';
+
+/** Everything behind sign-in: the bar on top and the page below; whoever is not signed in is sent there and back. */
+export function AppLayout() {
+  const session = useSession();
+  const queryClient = useQueryClient();
+  const location = useLocation();
+  useEffect(() => {
+    onSignedOut(() => void queryClient.invalidateQueries(sessionQuery));
+    return () => onSignedOut(() => {});
+  }, [queryClient]);
+
+  if (session.data?.actor) {
+    return (
+      <ActorProvider value={session.data.actor}>
+        <Shell actor={session.data.actor} />
+      </ActorProvider>
+    );
+  }
+  if (session.data?.needsSetup) return <SetupNeeded />;
+  if (session.data) return <Navigate to={paths.signIn(location.pathname + location.search)} replace />;
+  if (session.error) return <ProblemNote error={session.error} onRetry={() => void session.refetch()} />;
+  return <Loading what="Stemma" />;
+}
+
+function Shell({ actor }: { readonly actor: SessionActor }) {
+  const [isOpen, setOpen] = useState(false);
+  const location = useLocation();
+  // Choosing a page closes the folded menu.
+  // biome-ignore lint/correctness/useExhaustiveDependencies: it is the address that matters.
+  useEffect(() => setOpen(false), [location.pathname]);
+  const pages = [
+    { to: paths.home(), words: 'Work list' },
+    { to: paths.studies(), words: 'Studies' },
+    ...(actor.isAdministrator ? [{ to: paths.people(), words: 'People' }] : []),
+  ];
+  return (
+    <div className="grid min-h-dvh grid-rows-[auto_1fr]">
+      <a href="#main" className="sr-only bg-surface p-2 focus:not-sr-only focus:absolute focus:z-50">
+        Skip to the page
+      </a>
+      <header className="border-b border-rule bg-surface print:hidden">
+        <div className="flex min-h-(--shell-height) items-stretch">
+          <NavLink to={paths.home()} className="grid w-14 place-items-center border-r border-rule" aria-label="Stemma">
+            <Mark />
+          </NavLink>
+          <button
+            type="button"
+            className="px-4 font-semibold md:hidden"
+            aria-expanded={isOpen}
+            aria-controls="pages"
+            onClick={() => setOpen(!isOpen)}
+          >
+            Menu
+          </button>
+          <nav
+            id="pages"
+            aria-label="Pages"
+            className={`${isOpen ? 'absolute inset-x-0 top-(--shell-height) z-40 grid border-b border-rule bg-surface' : 'hidden'} md:static md:flex md:border-0`}
+          >
+            {pages.map((page) => (
+              <NavLink
+                key={page.to}
+                to={page.to}
+                end={page.to === paths.home()}
+                className={({ isActive }) =>
+                  `flex min-h-11 items-center border-b-4 px-4 font-semibold ${isActive ? 'border-ink' : 'border-transparent text-ink-2 hover:text-ink'}`
+                }
+              >
+                {page.words}
+              </NavLink>
+            ))}
+          </nav>
+          <div className="ml-auto flex items-center gap-3 px-4 text-sm">
+            <span className="text-ink-2 max-md:hidden">{actor.name}</span>
+            <ThemeChoice />
+            <SignOut />
+          </div>
+        </div>
+      </header>
+      <main id="main" tabIndex={-1} className="min-w-0 outline-none">
+        <Outlet />
+      </main>
+    </div>
+  );
+}
+
+function SignOut() {
+  const queryClient = useQueryClient();
+  const navigate = useNavigate();
+  const leave = useMutation({
+    mutationFn: () => call(signOut, {}),
+    onSuccess: async () => {
+      await navigate(paths.signIn());
+      queryClient.clear();
+    },
+  });
+  return (
+    <button type="button" className="min-h-8 underline" disabled={leave.isPending} onClick={() => leave.mutate()}>
+      Sign out
+    </button>
+  );
+}
+
+export function Mark() {
+  return (
+    <svg viewBox="0 0 32 32" className="size-8 text-primary" fill="none" aria-hidden="true">
+      <path d="M7 6v6l9 6v8M25 6v6l-9 6" stroke="currentColor" strokeWidth="2.6" />
+      <path d="M4.500 3.500h5v5h-5zM22.500 3.500h5v5h-5zM13.500 24h5v5h-5z" fill="currentColor" />
+    </svg>
+  );
+}

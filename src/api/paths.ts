@@ -1,7 +1,8 @@
 /** Every address in the app. */
 export const paths = {
   home: () => '/',
-  signIn: (returnTo?: string) => (returnTo && returnTo !== '/' ? `/sign-in?to=${encodeURIComponent(returnTo)}` : '/sign-in'),
+  signIn: (returnTo?: string) =>
+    returnTo && returnTo !== '/' ? `/sign-in?to=${encodeURIComponent(returnTo)}` : '/sign-in',
   forgotten: () => '/forgotten-password',
   studies: () => '/studies',
   study: (studyId: string) => `/studies/${studyId}`,

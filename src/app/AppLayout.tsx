@@ -6,6 +6,7 @@ import { call, onSignedOut } from '../api/call.ts';
 import { paths } from '../api/paths.ts';
 import { ActorProvider, type SessionActor, sessionQuery, useSession } from '../api/session.ts';
 import { Loading } from '../ui/Loading.tsx';
+import { Mark } from '../ui/Mark.tsx';
 import { ProblemNote } from '../ui/ProblemNote.tsx';
 import { SetupNeeded } from './SetupNeeded.tsx';
 import { ThemeChoice } from './ThemeChoice.tsx';
@@ -109,14 +110,5 @@ function SignOut() {
     <button type="button" className="min-h-8 underline" disabled={leave.isPending} onClick={() => leave.mutate()}>
       Sign out
     </button>
-  );
-}
-
-export function Mark() {
-  return (
-    <svg viewBox="0 0 32 32" className="size-8 text-primary" fill="none" aria-hidden="true">
-      <path d="M7 6v6l9 6v8M25 6v6l-9 6" stroke="currentColor" strokeWidth="2.6" />
-      <path d="M4.500 3.500h5v5h-5zM22.500 3.500h5v5h-5zM13.500 24h5v5h-5z" fill="currentColor" />
-    </svg>
   );
 }

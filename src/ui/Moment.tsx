@@ -12,7 +12,8 @@ export function Moment({ at }: { readonly at: string }) {
   const date = new Date(/[Z+]/.test(at) ? at : `${at.replace(' ', 'T')}Z`);
   return (
     <time dateTime={date.toISOString()} className="whitespace-nowrap">
-      {local.format(date)} <span className="num text-ink-2">({date.toISOString().slice(0, 16).replace('T', ' ')}Z)</span>
+      {local.format(date)}{' '}
+      <span className="num text-ink-2">({date.toISOString().slice(0, 16).replace('T', ' ')}Z)</span>
     </time>
   );
 }

@@ -2,34 +2,43 @@ import type { RouteStatus, SubmissionStatus } from '../../shared/domain/route-li
 
 export type MarkedStatus = RouteStatus | SubmissionStatus | 'basis changed';
 
-const looks: Record<MarkedStatus, { readonly words: string; readonly tone: string; readonly glyph: React.ReactNode }> = {
-  draft: { words: 'Draft', tone: 'text-ink-2', glyph: <circle cx="7" cy="7" r="5.2" strokeDasharray="2.4 2" /> },
-  'in review': {
-    words: 'In review',
-    tone: 'text-info',
-    glyph: (
-      <>
-        <circle cx="7" cy="7" r="5.2" />
-        <path d="M7 1.8 a5.2 5.2 0 0 1 0 10.4 z" fill="currentColor" />
-      </>
-    ),
-  },
-  open: {
-    words: 'In review',
-    tone: 'text-info',
-    glyph: (
-      <>
-        <circle cx="7" cy="7" r="5.2" />
-        <path d="M7 1.8 a5.2 5.2 0 0 1 0 10.4 z" fill="currentColor" />
-      </>
-    ),
-  },
-  approved: { words: 'Approved', tone: 'text-ok', glyph: <Ticked /> },
-  signed: { words: 'Signed', tone: 'text-ok', glyph: <Ticked /> },
-  returned: { words: 'Returned', tone: 'text-bad', glyph: <path d="M7 1.6 L13 12.4 H1 Z M7 5.4 v3.4 M7 10.2 v1" /> },
-  withdrawn: { words: 'Withdrawn', tone: 'text-ink-2', glyph: <path d="M1.8 7 a5.2 5.2 0 1 0 10.4 0 a5.2 5.2 0 1 0 -10.4 0 M2 12 L12 2" /> },
-  'basis changed': { words: 'Basis changed', tone: 'text-warn', glyph: <path d="M1 9 L4 9 L6 3 L8 11 L10 5 L13 5" /> },
-};
+const looks: Record<MarkedStatus, { readonly words: string; readonly tone: string; readonly glyph: React.ReactNode }> =
+  {
+    draft: { words: 'Draft', tone: 'text-ink-2', glyph: <circle cx="7" cy="7" r="5.2" strokeDasharray="2.4 2" /> },
+    'in review': {
+      words: 'In review',
+      tone: 'text-info',
+      glyph: (
+        <>
+          <circle cx="7" cy="7" r="5.2" />
+          <path d="M7 1.8 a5.2 5.2 0 0 1 0 10.4 z" fill="currentColor" />
+        </>
+      ),
+    },
+    open: {
+      words: 'In review',
+      tone: 'text-info',
+      glyph: (
+        <>
+          <circle cx="7" cy="7" r="5.2" />
+          <path d="M7 1.8 a5.2 5.2 0 0 1 0 10.4 z" fill="currentColor" />
+        </>
+      ),
+    },
+    approved: { words: 'Approved', tone: 'text-ok', glyph: <Ticked /> },
+    signed: { words: 'Signed', tone: 'text-ok', glyph: <Ticked /> },
+    returned: { words: 'Returned', tone: 'text-bad', glyph: <path d="M7 1.6 L13 12.4 H1 Z M7 5.4 v3.4 M7 10.2 v1" /> },
+    withdrawn: {
+      words: 'Withdrawn',
+      tone: 'text-ink-2',
+      glyph: <path d="M1.8 7 a5.2 5.2 0 1 0 10.4 0 a5.2 5.2 0 1 0 -10.4 0 M2 12 L12 2" />,
+    },
+    'basis changed': {
+      words: 'Basis changed',
+      tone: 'text-warn',
+      glyph: <path d="M1 9 L4 9 L6 3 L8 11 L10 5 L13 5" />,
+    },
+  };
 
 function Ticked() {
   return (

@@ -1,6 +1,21 @@
 const greek: Readonly<Record<string, string>> = {
-  alpha: 'α', beta: 'β', delta: 'δ', epsilon: 'ε', eta: 'η', theta: 'θ', lambda: 'λ', mu: 'μ', nu: 'ν', pi: 'π',
-  rho: 'ρ', sigma: 'σ', tau: 'τ', phi: 'φ', omega: 'ω', Delta: 'Δ', Phi: 'Φ',
+  alpha: 'α',
+  beta: 'β',
+  delta: 'δ',
+  epsilon: 'ε',
+  eta: 'η',
+  theta: 'θ',
+  lambda: 'λ',
+  mu: 'μ',
+  nu: 'ν',
+  pi: 'π',
+  rho: 'ρ',
+  sigma: 'σ',
+  tau: 'τ',
+  phi: 'φ',
+  omega: 'ω',
+  Delta: 'Δ',
+  Phi: 'Φ',
 };
 
 /** A quantity's symbol: italic, with what follows an underscore as an upright subscript. */

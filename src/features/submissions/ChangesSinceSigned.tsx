@@ -1,0 +1,75 @@
+import type { Submission } from '../../../shared/api/submissions.ts';
+import { Measured } from '../../ui/Measured.tsx';
+import { Symbol_ } from '../../ui/Symbol.tsx';
+
+const percent = new Intl.NumberFormat('en-GB', { maximumFractionDigits: 1, signDisplay: 'exceptZero' });
+
+/** Every number of the package against what was signed last: was, now, and the change in per cent. */
+export function ChangesSinceSigned({ submission }: { readonly submission: Submission }) {
+  const { snapshot, signedBefore } = submission;
+  if (!signedBefore) {
+    return (
+      <section aria-label="What changed">
+        <h2 className="border-b border-rule pb-1 text-lg font-bold">What changed</h2>
+        <p className="pt-2 text-ink-2">First review: nothing of this was signed before.</p>
+      </section>
+    );
+  }
+  const rows = snapshot.model.quantities.flatMap((quantity) => {
+    const now = snapshot.evaluation.quantities[quantity.id]?.result ?? null;
+    const was = signedBefore.evaluation.quantities[quantity.id]?.result ?? null;
+    const isSame = now && was && Math.abs(now.value - was.value) <= 1e-12 * Math.abs(was.value) && now.u === was.u;
+    return isSame ? [] : [{ quantity, now, was }];
+  });
+  return (
+    <section aria-label="What changed" className="grid gap-2">
+      <h2 className="flex justify-between border-b border-rule pb-1 text-lg font-bold">
+        What changed{' '}
+        <span className="text-sm font-normal text-ink-2">
+          {rows.length} of {snapshot.model.quantities.length} numbers, the others hidden
+        </span>
+      </h2>
+      {rows.length > 0 && (
+        <div className="overflow-x-auto">
+          <table className="w-full border border-rule bg-surface text-sm">
+            <caption className="sr-only">Numbers that differ from what was signed last</caption>
+            <thead>
+              <tr className="border-b border-rule text-left">
+                <th scope="col" className="px-2 py-1">
+                  Quantity
+                </th>
+                <th scope="col" className="px-2 py-1">
+                  Was
+                </th>
+                <th scope="col" className="px-2 py-1">
+                  Now
+                </th>
+                <th scope="col" className="px-2 py-1 text-right">
+                  Change
+                </th>
+              </tr>
+            </thead>
+            <tbody>
+              {rows.map(({ quantity, now, was }) => (
+                <tr key={quantity.id} className="border-b border-hair">
+                  <th scope="row" className="px-2 py-1.5 text-left font-normal">
+                    <Symbol_ symbol={quantity.symbol} /> {quantity.name}
+                  </th>
+                  <td className="px-2 py-1.5 text-ink-2">
+                    {was ? <Measured value={was.value} u={was.u} unit={quantity.unit} /> : 'not signed before'}
+                  </td>
+                  <td className="px-2 py-1.5 font-semibold">
+                    {now ? <Measured value={now.value} u={now.u} unit={quantity.unit} /> : 'no value'}
+                  </td>
+                  <td className="num px-2 py-1.5 text-right">
+                    {now && was && was.value !== 0 ? `${percent.format((now.value / was.value - 1) * 100)} %` : '–'}
+                  </td>
+                </tr>
+              ))}
+            </tbody>
+          </table>
+        </div>
+      )}
+    </section>
+  );
+}

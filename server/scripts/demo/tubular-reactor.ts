@@ -151,7 +151,7 @@ export async function makeTubularReactor(people: People, memberIds: Parameters<t
 
   const heat = quantity({
     symbol: 'h_rig',
-    name: 'Wall heat-transfer coefficient of the rig',
+    name: 'Wall heat-transfer coefficient',
     unit: 'W/(m2 K)',
     operatingPointId: bench.id,
   });

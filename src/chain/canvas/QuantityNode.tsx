@@ -1,6 +1,7 @@
 import { Handle, type Node, type NodeProps, Position, useStore } from 'reactflow';
 import { routeInForce } from '../../../shared/engine/evaluate/upstream.ts';
 import type { Quantity, Route } from '../../../shared/engine/model/study-model.ts';
+import { typesetUnit } from '../../../shared/engine/quantity/format-measured.ts';
 import { fromSi, parseUnit } from '../../../shared/engine/quantity/parse-unit.ts';
 import { VerdictMark } from '../../charts/LogWindow.tsx';
 import { plainNumber } from '../../charts/plain-number.ts';
@@ -101,7 +102,7 @@ function CardValue({
   if (!result || !unit.ok) return <span className="pt-1.5 text-lg text-ink-2">no value yet</span>;
   return (
     <span className="num truncate pt-1.5 text-[1.25rem]">
-      <b>{plainNumber(fromSi(result.value, unit.unit))}</b> {quantity.unit}
+      <b>{plainNumber(fromSi(result.value, unit.unit))}</b> {typesetUnit(quantity.unit)}
     </span>
   );
 }

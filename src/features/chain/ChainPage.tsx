@@ -9,6 +9,7 @@ import { useActor } from '../../api/session.ts';
 import { ChainProvider, type HeldText } from '../../chain/chain-context.ts';
 import { Loading } from '../../ui/Loading.tsx';
 import { ProblemNote } from '../../ui/ProblemNote.tsx';
+import { usePageTitle } from '../../ui/use-page-title.ts';
 import { studyQuery } from './study-queries.ts';
 import { useSelection } from './use-selection.ts';
 import { useStudyDocument } from './use-study-document.ts';
@@ -24,6 +25,7 @@ export function Component() {
 }
 
 function OpenStudy({ study }: { readonly study: Study }) {
+  usePageTitle(study.title);
   const actor = useActor();
   const { document, state } = useStudyDocument(study);
   const { selectedId, select } = useSelection();

@@ -75,6 +75,9 @@ export function Toolbar({
       <Link className={`${tool} inline-flex items-center`} to={paths.decisionLog(studyId)}>
         Decision log
       </Link>
+      <Link className={`${tool} inline-flex items-center`} to={paths.members(studyId)}>
+        Members
+      </Link>
       <span className="ml-auto flex flex-wrap items-center gap-3">
         {mayEdit.allowed ? <SaveStatus /> : <span className="text-xs text-ink-2">{mayEdit.reason}</span>}
         {maySubmit && state.model.quantities.length > 0 && <Button onClick={onSubmit}>Submit for review</Button>}

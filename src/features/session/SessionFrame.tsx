@@ -1,5 +1,6 @@
-import { type ReactNode, useEffect } from 'react';
+import type { ReactNode } from 'react';
 import { Mark } from '../../ui/Mark.tsx';
+import { usePageTitle } from '../../ui/use-page-title.ts';
 
 /** The sheet that the pages before sign-in stand on, with the caution that goes with every estimate. */
 export function SessionFrame({
@@ -11,9 +12,7 @@ export function SessionFrame({
   readonly problem?: boolean;
   readonly children: ReactNode;
 }) {
-  useEffect(() => {
-    document.title = `${problem ? 'Error: ' : ''}${title} · Stemma`;
-  }, [title, problem]);
+  usePageTitle(title, problem);
   return (
     <main className="grid min-h-dvh content-center justify-items-center gap-6 p-4">
       <div className="grid w-full max-w-md gap-5 border-2 border-rule bg-surface p-6">

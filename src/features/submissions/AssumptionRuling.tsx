@@ -28,7 +28,7 @@ export function AssumptionRuling({
   const asking = useAsking();
   const given = submission.rulings.find((one) => one.routeId === routeId && one.assumptionKey === assumption.key);
   return (
-    <li className="grid gap-2 border border-line bg-surface p-3">
+    <li className="grid grid-cols-[minmax(0,1fr)] gap-2 border border-line bg-surface p-3">
       <div className="flex flex-wrap items-start justify-between gap-2">
         <p className="font-semibold">{assumption.statement}</p>
         {assumption.verdict === 'by judgement' ? (

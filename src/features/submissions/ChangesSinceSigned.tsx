@@ -22,7 +22,7 @@ export function ChangesSinceSigned({ submission }: { readonly submission: Submis
     return isSame ? [] : [{ quantity, now, was }];
   });
   return (
-    <section aria-label="What changed" className="grid gap-2">
+    <section aria-label="What changed" className="grid grid-cols-[minmax(0,1fr)] gap-2">
       <h2 className="flex justify-between border-b border-rule pb-1 text-lg font-bold">
         What changed{' '}
         <span className="text-sm font-normal text-ink-2">

@@ -24,7 +24,7 @@ export function RouteReview({ submission, routeId }: { readonly submission: Subm
   if (!route || !quantity || !outcome) return null;
   const method = route.kind === 'correlation' ? findMethod(route.methodId) : undefined;
   return (
-    <section aria-label={`${quantity.name}: ${route.name}`} className="grid gap-3">
+    <section aria-label={`${quantity.name}: ${route.name}`} className="grid grid-cols-[minmax(0,1fr)] gap-3">
       <div className="border-b border-rule pb-1">
         <h2 className="text-lg font-bold">
           <Symbol_ symbol={quantity.symbol} /> {quantity.name}

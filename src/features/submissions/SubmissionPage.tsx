@@ -29,7 +29,7 @@ function Review({ submission }: { readonly submission: Submission }) {
   const result = snapshot.evaluation.quantities[snapshot.targetQuantityId]?.result;
   return (
     <Page title={`Review of ${target?.name ?? 'a quantity'}`}>
-      <div className="grid gap-6 lg:grid-cols-[1fr_20rem]">
+      <div className="grid grid-cols-[minmax(0,1fr)] gap-6 lg:grid-cols-[minmax(0,1fr)_20rem]">
         <div className="grid min-w-0 content-start gap-6">
           <section aria-label="What is submitted" className="grid gap-2">
             <p className="flex flex-wrap items-center gap-x-3 gap-y-1 text-sm">

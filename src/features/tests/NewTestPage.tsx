@@ -12,6 +12,7 @@ import { paths } from '../../api/paths.ts';
 import { ActionButton } from '../../ui/ActionButton.tsx';
 import { Loading } from '../../ui/Loading.tsx';
 import { ProblemNote } from '../../ui/ProblemNote.tsx';
+import { usePageTitle } from '../../ui/use-page-title.ts';
 import { ColumnMapping, RawBesideRead } from './ColumnMapping.tsx';
 import { ReducedValues } from './ReducedValues.tsx';
 import { InstrumentField, type InstrumentKey, instrumentNames, RigFields } from './RigFields.tsx';
@@ -31,6 +32,7 @@ export function Component() {
 type Instruments = Partial<Record<InstrumentKey, Uncertainty>>;
 
 function NewTest({ study }: { readonly study: Study }) {
+  usePageTitle('New test from steady readings');
   const [id] = useState(() => crypto.randomUUID());
   const [text, setText] = useState('');
   const [fileName, setFileName] = useState('pasted-readings.csv');
@@ -111,7 +113,7 @@ function NewTest({ study }: { readonly study: Study }) {
   const means = readings ? meansOf(readings) : null;
 
   return (
-    <main className="mx-auto grid w-full max-w-5xl gap-6 px-4 py-6">
+    <div className="mx-auto grid w-full max-w-5xl gap-6 px-4 py-6">
       <header>
         <Link className="text-sm text-primary underline" to={paths.study(study.id)}>
           {study.title}
@@ -153,12 +155,18 @@ function NewTest({ study }: { readonly study: Study }) {
         </div>
       </Step>
 
-      {guess && (
-        <Step number={2} title="Columns and units">
-          <ColumnMapping header={guess.header} preview={guess.preview} mapping={mapping} onChange={setMapping} />
-          <RawBesideRead header={guess.header} preview={guess.preview} file={read?.file ?? null} />
-        </Step>
-      )}
+      <Step number={2} title="Columns and units">
+        {guess ? (
+          <>
+            <ColumnMapping header={guess.header} preview={guess.preview} mapping={mapping} onChange={setMapping} />
+            <RawBesideRead header={guess.header} preview={guess.preview} file={read?.file ?? null} />
+          </>
+        ) : (
+          <p className="text-sm text-ink-2">
+            Once there are readings, say here which column is what, and in which unit.
+          </p>
+        )}
+      </Step>
 
       <Step number={3} title="Rig and instruments">
         <div className="grid gap-3 sm:grid-cols-3">
@@ -241,7 +249,7 @@ function NewTest({ study }: { readonly study: Study }) {
           </ActionButton>
         </span>
       </Step>
-    </main>
+    </div>
   );
 }
 

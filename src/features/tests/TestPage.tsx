@@ -22,13 +22,13 @@ export function Component() {
   const test = study.data.model.tests.find((one) => one.id === testId);
   if (!test) {
     return (
-      <main className="grid gap-3 px-4 py-6">
+      <div className="grid gap-3 px-4 py-6">
         <h1 className="text-xl font-bold">No such test</h1>
         <p>It is not in this study, or it was removed; the decision log says by whom.</p>
         <Link className="text-primary underline" to={paths.study(studyId)}>
           Back to the chain
         </Link>
-      </main>
+      </div>
     );
   }
   return <Shown study={study.data} test={test} />;
@@ -53,7 +53,7 @@ function Shown({ study, test }: { readonly study: Study; readonly test: Test }) 
     .filter((finding) => finding.subject.id === test.id)
     .map((finding) => finding.sentence);
   return (
-    <main className="mx-auto grid w-full max-w-5xl gap-6 px-4 py-6">
+    <div className="mx-auto grid w-full max-w-5xl gap-6 px-4 py-6">
       <header>
         <Link className="text-sm text-primary underline" to={paths.study(study.id)}>
           {study.title}
@@ -124,6 +124,6 @@ function Shown({ study, test }: { readonly study: Study; readonly test: Test }) 
           </section>
         )}
       </section>
-    </main>
+    </div>
   );
 }

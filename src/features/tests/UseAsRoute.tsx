@@ -56,7 +56,7 @@ export function UseAsRoute({ study, test }: { readonly study: Study; readonly te
   });
 
   return (
-    <main className="mx-auto grid w-full max-w-2xl gap-5 px-4 py-6">
+    <div className="mx-auto grid w-full max-w-2xl gap-5 px-4 py-6">
       <h1 className="text-xl font-bold">{test.name} is in the study</h1>
       <p className="text-sm">
         The original file is kept with its SHA-256,{' '}
@@ -98,6 +98,6 @@ export function UseAsRoute({ study, test }: { readonly study: Study; readonly te
           </Link>
         </span>
       </form>
-    </main>
+    </div>
   );
 }

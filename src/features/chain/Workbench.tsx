@@ -88,8 +88,11 @@ export function Workbench({
       <Toolbar
         view={view}
         onShow={show}
-        showsContents={showsContents}
-        onContents={() => setShowsContents(!showsContents)}
+        showsContents={showsContents && selectedId === null}
+        onContents={() => {
+          setShowsContents(selectedId !== null || !showsContents);
+          select(null);
+        }}
         onSubmit={() => setSubmitting(true)}
       />
       <div role="status" className="sr-only">

@@ -4,7 +4,14 @@ import { auditEntry } from '../../server/db/schema/decision-log.ts';
 import { outbox } from '../../server/db/schema/outbox.ts';
 import type { Caller } from '../../server/scripts/api-caller.ts';
 import { addMember, type ChainEdit, createStudy, editChain, getStudy, type Study } from '../../shared/api/studies.ts';
-import { openSubmission, ruleOnAssumption, type Submission } from '../../shared/api/submissions.ts';
+import {
+  getSubmission,
+  openSubmission,
+  ruleOnAssumption,
+  type Submission,
+  signatureMeanings,
+  signSubmission,
+} from '../../shared/api/submissions.ts';
 import type { StudyRole } from '../../shared/domain/ability.ts';
 import {
   type AuditEvent,
@@ -19,7 +26,7 @@ import type {
   Route,
   StudyModel,
 } from '../../shared/engine/model/study-model.ts';
-import { type BuiltPerson, person } from './builders.ts';
+import { type BuiltPerson, person, testPassword } from './builders.ts';
 import type { TestApp } from './test-app.ts';
 
 export type TeamMember = Caller & { readonly person: BuiltPerson };
@@ -147,8 +154,12 @@ export function smallChain(): SmallChain {
 
 type Item = { readonly id: string };
 
-export function edit(kind: ChainItemKind, body: Item, expectedRevision: number): ChainEdit {
-  return { kind, id: body.id, expectedRevision, body } as ChainEdit;
+export function edit<Body extends NonNullable<ChainEdit['body']>>(
+  kind: ChainItemKind,
+  body: Body,
+  expectedRevision: number,
+): ChainEdit {
+  return { kind, id: body.id, expectedRevision, body };
 }
 
 export function removal(kind: ChainItemKind, { id }: Item, expectedRevision = 1): ChainEdit {
@@ -241,4 +252,22 @@ export async function logOf(
 export async function owedFor(app: TestApp, submissionId: string) {
   const rows = await app.db.select().from(outbox);
   return rows.filter((row) => row.payload.submissionId === submissionId);
+}
+
+export function sign(
+  caller: Caller,
+  submission: Submission,
+  facts: { readonly password?: string; readonly snapshotHash?: string } = {},
+) {
+  const body = {
+    password: testPassword,
+    meaning: signatureMeanings[0],
+    snapshotHash: submission.snapshotHash,
+    ...facts,
+  };
+  return caller.call(signSubmission, { params: { submissionId: submission.id }, body });
+}
+
+export async function seenSubmission(caller: Caller, { id }: Item): Promise<Submission> {
+  return (await caller.call(getSubmission, { params: { submissionId: id } })).body;
 }

@@ -1,5 +1,5 @@
 import compression from 'compression';
-import express, { type Express } from 'express';
+import express, { type Express, type RequestHandler } from 'express';
 import type { Logger } from 'pino';
 import { pinoHttp } from 'pino-http';
 import type { Database } from './db/database.ts';
@@ -46,7 +46,10 @@ export function createApp(options: {
     now: services.now,
     secret: options.sessionSecret,
     isHttps,
-    throttle: createThrottle({ tries: 10, perSeconds: 900, what: 'this account or from this address' }),
+    throttles: {
+      account: createThrottle({ tries: 10, perSeconds: 900, what: 'this account' }),
+      address: createThrottle({ tries: 50, perSeconds: 900, what: 'one network address' }),
+    },
   });
 
   const app = express();
@@ -85,15 +88,20 @@ export function createApp(options: {
       db,
       services,
       authenticate: sessions.authenticate,
-      linkThrottle: createThrottle({ tries: 5, perSeconds: 3600, what: 'password links' }),
+      linkThrottles: {
+        account: createThrottle({ tries: 5, perSeconds: 3600, of: 'password links', what: 'this account' }),
+        address: createThrottle({ tries: 30, perSeconds: 3600, of: 'password links', what: 'one network address' }),
+      },
     }),
     fileRouter(db),
     mountHandlers(handlers, { db, services }),
   );
-  app.use('/api', () => {
+  const nothingHere: RequestHandler = () => {
     throw new Problem('not found', 'There is nothing at this address.');
-  });
+  };
+  app.use('/api', nothingHere);
   if (options.clientFolder !== null) app.use(servePages(options.clientFolder));
+  app.use(nothingHere);
   app.use(answerProblems(log));
   return app;
 }

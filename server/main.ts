@@ -5,6 +5,7 @@ import { pino } from 'pino';
 import { createApp } from './app.ts';
 import { unsafeSettings } from './db/check-settings.ts';
 import { openDatabase } from './db/database.ts';
+import { errorForLog } from './db/database-error.ts';
 import { linkLifetimes, makeLink } from './db/make-link.ts';
 import { people } from './db/schema/people.ts';
 import { EnvironmentError, readServerEnvironment, type ServerEnvironment } from './environment.ts';
@@ -18,7 +19,7 @@ function sayToPerson(line: string): void {
 }
 
 async function serve(environment: ServerEnvironment): Promise<void> {
-  const log = pino({ level: environment.logLevel });
+  const log = pino({ level: environment.logLevel, serializers: { err: errorForLog } });
   const db = openDatabase(environment.database);
   const services: Services = {
     now: () => new Date(),
@@ -72,7 +73,7 @@ async function serve(environment: ServerEnvironment): Promise<void> {
       stop().then(
         () => process.exit(0),
         (error: unknown) => {
-          log.error({ error }, 'did not stop cleanly');
+          log.error({ err: error }, 'did not stop cleanly');
           process.exit(1);
         },
       );

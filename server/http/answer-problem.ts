@@ -3,25 +3,8 @@ import multer from 'multer';
 import type { Logger } from 'pino';
 import type * as z from 'zod';
 import type { ProblemBody } from '../../shared/api/problem.ts';
+import { isContention, isDatabaseAway } from '../db/database-error.ts';
 import { Problem } from './problem.ts';
-
-const lostConnection = new Set([
-  'ECONNREFUSED',
-  'ECONNRESET',
-  'ENOENT',
-  'ETIMEDOUT',
-  'PROTOCOL_CONNECTION_LOST',
-  'PROTOCOL_SEQUENCE_TIMEOUT',
-  'ER_SERVER_SHUTDOWN',
-  'ER_STATEMENT_TIMEOUT',
-  'POOL_CLOSED',
-]);
-
-function isDatabaseAway(error: unknown): boolean {
-  if (typeof error !== 'object' || error === null) return false;
-  if ('code' in error && typeof error.code === 'string' && lostConnection.has(error.code)) return true;
-  return 'cause' in error && isDatabaseAway(error.cause);
-}
 
 /** The refusal that zod's issues amount to, field by field: `body.title` -> sentence. */
 export function invalidInput(error: z.ZodError, part: 'params' | 'query' | 'body'): Problem {
@@ -43,6 +26,13 @@ export function tooLarge(maxBytes: number): Problem {
   );
 }
 
+/** Express and its parts put the status of a malformed request on their errors; null for everything else. */
+function statusOf(error: unknown): number | null {
+  if (typeof error !== 'object' || error === null || !('status' in error)) return null;
+  const { status } = error;
+  return typeof status === 'number' && status >= 400 && status < 500 ? status : null;
+}
+
 function toProblem(error: unknown, log: Logger): Problem {
   if (error instanceof Problem) return error;
   if (error instanceof multer.MulterError) {
@@ -56,14 +46,25 @@ function toProblem(error: unknown, log: Logger): Problem {
       return new Problem('invalid', 'What was sent is not readable JSON.');
     }
   }
+  const status = statusOf(error);
+  if (status === 404) return new Problem('not found', 'There is nothing at this address.');
+  if (status !== null)
+    return new Problem('invalid', 'The request cannot be read; its address or headers are malformed.');
   if (isDatabaseAway(error)) {
-    log.error({ error }, 'the database does not answer');
+    log.error({ err: error }, 'the database does not answer');
     return new Problem(
       'unavailable',
       'The database does not answer, so nothing can be read or saved just now. What you typed is still on the screen; try again in a moment.',
     );
   }
-  log.error({ error }, 'unexpected');
+  if (isContention(error)) {
+    log.warn({ err: error }, 'gave up on a change that others were in the way of');
+    return new Problem(
+      'unavailable',
+      'Somebody else is changing the same thing just now, so nothing was saved. What you typed is still on the screen; try again in a moment.',
+    );
+  }
+  log.error({ err: error }, 'unexpected');
   return new Problem('unexpected', 'Something went wrong on the server. Reload to see what was saved.');
 }
 

@@ -3,27 +3,24 @@ import type { Endpoint } from '../../shared/api/endpoint.ts';
 import type { SignedInActor } from '../db/actor.ts';
 import { appendEntry } from '../db/append-entry.ts';
 import type { Database, Transaction } from '../db/database.ts';
+import { isContention } from '../db/database-error.ts';
 import { outbox } from '../db/schema/outbox.ts';
 import type { Notice } from '../notices/notice.ts';
 import type { AuditRecord, CommandHandler, CommandResult, Services, UploadedFile } from './handler.ts';
 
-/** What MariaDB rolls back whole and a second try may well do: deadlock, snapshot conflict, lock wait. */
-const worthAnotherTry = new Set([1213, 1020, 1205]);
 const mostTries = 4;
+/** Later than this no try is begun, so that even one that waits for locks ends within ten seconds. */
+const lastStartMs = 4000;
 
-function errnoOf(error: unknown): number | null {
-  if (typeof error !== 'object' || error === null) return null;
-  if ('errno' in error && typeof error.errno === 'number') return error.errno;
-  return 'cause' in error ? errnoOf(error.cause) : null;
-}
-
-/** Runs `work` in one transaction, again from the start when the database asks for it. */
+/** Runs `work` in one transaction, again from the start when others were in its way. */
 export async function inTransaction<Result>(db: Database, work: (tx: Transaction) => Promise<Result>): Promise<Result> {
+  const begun = performance.now();
   for (let attempt = 1; ; attempt += 1) {
     try {
       return await db.transaction(work);
     } catch (error) {
-      if (attempt === mostTries || !worthAnotherTry.has(errnoOf(error) ?? 0)) throw error;
+      const mayTryAgain = attempt < mostTries && performance.now() - begun < lastStartMs;
+      if (!mayTryAgain || !isContention(error)) throw error;
     }
   }
 }

@@ -24,13 +24,14 @@ export function createSessions(options: {
   readonly now: () => Date;
   readonly secret: string;
   readonly isHttps: boolean;
-  readonly throttle: Throttle;
+  /** Of each account and, wider, of each network address, behind which there may be a whole office. */
+  readonly throttles: { readonly account: Throttle; readonly address: Throttle };
 }): {
   readonly middleware: RequestHandler[];
   readonly authenticate: RequestHandler;
   readonly store: DatabaseSessionStore;
 } {
-  const { db, throttle } = options;
+  const { db, throttles } = options;
   const store = new DatabaseSessionStore(db, options.now);
   const passport = new passportModule.Passport();
 
@@ -39,18 +40,15 @@ export function createSessions(options: {
   passport.use(
     new LocalStrategy({ usernameField: 'email', passReqToCallback: true }, async (request, email, password, done) => {
       try {
-        const keys = [`account ${normaliseEmail(email)}`, `address ${request.ip ?? ''}`];
-        await throttle.requireLeft(...keys);
-        const [person] = await db
-          .select()
-          .from(people)
-          .where(eq(people.email, normaliseEmail(email)));
+        const account = normaliseEmail(email);
+        const address = request.ip ?? '';
+        await throttles.address.take(address);
+        await throttles.account.take(account);
+        const [person] = await db.select().from(people).where(eq(people.email, account));
         const matches = await passwordMatches(person?.passwordHash ?? null, password);
-        if (!person || !matches || !person.isActive) {
-          await throttle.countFailure(...keys);
-          throw new Problem('signed out', wrongCredentials);
-        }
-        await throttle.forgive(keys[0] ?? '');
+        if (!person || !matches || !person.isActive) throw new Problem('signed out', wrongCredentials);
+        await throttles.account.forgive(account);
+        await throttles.address.giveBack(address);
         done(null, { personId: person.id });
       } catch (error) {
         done(error);

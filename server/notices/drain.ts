@@ -89,7 +89,7 @@ export function createDrain(options: {
 
   async function run(): Promise<void> {
     while (!stopping) {
-      await sendDue().catch((error: unknown) => log.warn({ error }, 'the outbox could not be read'));
+      await sendDue().catch((error: unknown) => log.warn({ err: error }, 'the outbox could not be read'));
       if (stopping) return;
       await new Promise<void>((resolve) => {
         const timer = setTimeout(resolve, pauseMs);

@@ -4,6 +4,7 @@ import type { AddressInfo } from 'node:net';
 import { pino } from 'pino';
 import { createApp } from '../../server/app.ts';
 import type { Database } from '../../server/db/database.ts';
+import { errorForLog } from '../../server/db/database-error.ts';
 import type { Services } from '../../server/http/handler.ts';
 import { type Caller, callerAt, cookieOf } from '../../server/scripts/api-caller.ts';
 import { signIn } from '../../shared/api/session.ts';
@@ -21,9 +22,21 @@ export type TestApp = {
   readonly stop: () => Promise<void>;
 };
 
-/** The whole server on a port of its own with a database of its own; only the clock can be set. */
-export async function startTestApp(options: { readonly now?: () => Date } = {}): Promise<TestApp> {
-  const fresh = await freshDatabase();
+type Options = {
+  readonly now?: () => Date;
+  /** A database on a server that the test may stop; else one on the server of the test run. */
+  readonly on?: FreshDatabase;
+  /** Where people reach it; else where it listens. */
+  readonly publicAddress?: string;
+  readonly clientFolder?: string;
+  /** Takes the lines of the log, one JSON object each. */
+  readonly writeLog?: (line: string) => void;
+};
+
+/** The whole server on a port of its own with a database of its own. */
+export async function startTestApp(options: Options = {}): Promise<TestApp> {
+  const fresh = options.on ?? (await freshDatabase());
+  const { writeLog } = options;
   const server: Server = createServer();
   await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve));
   const address = `http://127.0.0.1:${(server.address() as AddressInfo).port}`;
@@ -31,16 +44,16 @@ export async function startTestApp(options: { readonly now?: () => Date } = {}):
     now: options.now ?? (() => new Date()),
     newId: randomUUID,
     newToken: () => randomBytes(32).toString('hex'),
-    publicAddress: address,
+    publicAddress: options.publicAddress ?? address,
   };
   server.on(
     'request',
     createApp({
       db: fresh.db,
       services,
-      log: pino({ level: 'silent' }),
+      log: writeLog ? pino({ serializers: { err: errorForLog } }, { write: writeLog }) : pino({ level: 'silent' }),
       sessionSecret: randomBytes(32).toString('hex'),
-      clientFolder: null,
+      clientFolder: options.clientFolder ?? null,
     }),
   );
   const anonymous = callerAt(address, '');

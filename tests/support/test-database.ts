@@ -4,6 +4,7 @@ import { inject } from 'vitest';
 import { type Database, type DatabaseAddress, openDatabase } from '../../server/db/database.ts';
 import { dropDatabase, openAdmin } from '../../server/scripts/database.ts';
 import { prepareDatabase } from '../../server/scripts/prepare-database.ts';
+import type { TestDatabaseServer } from './database-setup.ts';
 
 export type FreshDatabase = {
   /** Signed in as the server's account. */
@@ -15,9 +16,8 @@ export type FreshDatabase = {
   readonly drop: () => Promise<void>;
 };
 
-/** A database of its own, made by the migrations, on the MariaDB of this test run. */
-export async function freshDatabase(): Promise<FreshDatabase> {
-  const server = inject('databaseServer');
+/** A database of its own, made by the migrations, on the MariaDB of this test run or on one that the test may stop. */
+export async function freshDatabase(server: TestDatabaseServer = inject('databaseServer')): Promise<FreshDatabase> {
   const name = `stemma_test_${randomUUID().replaceAll('-', '')}`;
   await prepareDatabase(server, name);
   const { host, port } = server;

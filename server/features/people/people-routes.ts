@@ -2,6 +2,7 @@ import { and, asc, count, eq, ne } from 'drizzle-orm';
 import { changePerson, invitePerson, listPeople, type Person } from '../../../shared/api/people.ts';
 import { allowed, type Decision, denied } from '../../../shared/domain/decision.ts';
 import type { SignedInActor } from '../../db/actor.ts';
+import { isDuplicate } from '../../db/database-error.ts';
 import { linkLifetimes, makeLink } from '../../db/make-link.ts';
 import { people } from '../../db/schema/people.ts';
 import { defineCommand, defineQuery, type Handler } from '../../http/handler.ts';
@@ -17,6 +18,11 @@ function toPerson(row: typeof people.$inferSelect): Person {
   return { ...row, hasPassword: row.passwordHash !== null };
 }
 
+function addressTaken(email: string, owner: string): Problem {
+  const sentence = `${email} belongs to ${owner} already. Every person has an address of their own.`;
+  return new Problem('invalid', sentence, { fields: { 'body.email': sentence } });
+}
+
 const listPeopleQuery = defineQuery(listPeople, async ({ reader }) => ({
   people: (await reader.select().from(people).orderBy(asc(people.name))).map(toPerson),
 }));
@@ -25,15 +31,18 @@ const invitePersonCommand = defineCommand(invitePerson, async ({ actor, body, tx
   requireAllowed(canManagePeople(actor));
   const email = normaliseEmail(body.email);
   const [known] = await tx.select({ name: people.name }).from(people).where(eq(people.email, email));
-  if (known) {
-    const sentence = `${email} belongs to ${known.name} already. Every person has an address of their own.`;
-    throw new Problem('invalid', sentence, { fields: { 'body.email': sentence } });
-  }
+  if (known) throw addressTaken(email, known.name);
   const id = services.newId();
   const now = services.now();
   const { name, isAdministrator, isAuditor } = body;
   const row = { id, email, name, isAdministrator, isAuditor, isActive: true, passwordHash: null, createdAt: now };
-  await tx.insert(people).values(row);
+  await tx
+    .insert(people)
+    .values(row)
+    .catch((error: unknown) => {
+      // Somebody else invited the same address between our look and this.
+      throw isDuplicate(error) ? addressTaken(email, 'somebody') : error;
+    });
   const token = services.newToken();
   const expiresAt = new Date(now.getTime() + linkLifetimes.invitation);
   await makeLink(tx, { token, personId: id, purpose: 'password', expiresAt });

@@ -22,7 +22,7 @@ import { inTransaction, recordChange } from '../../http/run-handler.ts';
 import { normaliseEmail, wrongCredentials } from '../../http/session.ts';
 import { endSessionsOf } from '../../http/session-store.ts';
 import type { Throttle } from '../../http/throttle.ts';
-import { useLink } from './one-time-links.ts';
+import { requireLink, useLink } from './one-time-links.ts';
 
 /** What the client learns of the person who is signed in. */
 function describe(actor: SignedInActor): z.input<typeof actorSchema> {
@@ -40,7 +40,7 @@ export function sessionRouter(options: {
   readonly db: Database;
   readonly services: Services;
   readonly authenticate: RequestHandler;
-  readonly linkThrottle: Throttle;
+  readonly linkThrottles: { readonly account: Throttle; readonly address: Throttle };
 }): Router {
   const { db, services, authenticate } = options;
   const router = Router();
@@ -77,6 +77,8 @@ export function sessionRouter(options: {
 
   addRoute(router, setUpAdministrator, async (request, response) => {
     const body = parsePart(setUpAdministrator.body, request.body, 'body');
+    // Before hashing: whoever has no link must not make the server work.
+    await requireLink(db, body.token, 'setup', services.now());
     const passwordHash = await hashPassword(body.password);
     const personId = services.newId();
     await inTransaction(db, async (tx) => {
@@ -113,9 +115,8 @@ export function sessionRouter(options: {
 
   addRoute(router, requestPasswordLink, async (request, response) => {
     const email = normaliseEmail(parsePart(requestPasswordLink.body, request.body, 'body').email);
-    const keys = [`link ${email}`, `link from ${request.ip ?? ''}`];
-    await options.linkThrottle.requireLeft(...keys);
-    await options.linkThrottle.countFailure(...keys);
+    await options.linkThrottles.address.take(request.ip ?? '');
+    await options.linkThrottles.account.take(email);
     const [person] = await db.select().from(people).where(eq(people.email, email));
     if (person?.isActive) {
       const token = services.newToken();
@@ -138,6 +139,7 @@ export function sessionRouter(options: {
 
   addRoute(router, setPassword, async (request, response) => {
     const body = parsePart(setPassword.body, request.body, 'body');
+    await requireLink(db, body.token, 'password', services.now());
     const passwordHash = await hashPassword(body.password);
     const email = await inTransaction(db, async (tx) => {
       const { personId } = await useLink(tx, body.token, 'password', services.now());

@@ -50,8 +50,8 @@ function Shell({ actor }: { readonly actor: SessionActor }) {
       <a href="#main" className="sr-only bg-surface p-2 focus:not-sr-only focus:absolute focus:z-50">
         Skip to the page
       </a>
-      <header className="border-b border-rule bg-surface print:hidden">
-        <div className="flex min-h-(--shell-height) items-stretch">
+      <header className="h-(--shell-height) border-b border-rule bg-surface print:hidden">
+        <div className="flex h-full items-stretch">
           <NavLink to={paths.home()} className="grid w-14 place-items-center border-r border-rule" aria-label="Stemma">
             <Mark />
           </NavLink>

@@ -67,7 +67,7 @@ function OneConflict({
           },
         ];
   return (
-    <div className="overflow-x-auto pt-3">
+    <div className="relative overflow-x-auto pt-3">
       <table className="w-full border border-rule text-sm">
         <caption className="pb-1 text-left font-semibold">{name}</caption>
         <thead>

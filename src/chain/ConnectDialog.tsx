@@ -58,7 +58,7 @@ function TargetChoice({ sourceId, onChoose }: { readonly sourceId: string; reado
       <p role="status" className="text-xs text-ink-2">
         {found.length} of {state.model.quantities.length - 1} quantities
       </p>
-      <ul className="grid max-h-72 gap-1 overflow-y-auto">
+      <ul className="grid max-h-72 gap-1 relative overflow-y-auto">
         {found.map((quantity) => (
           <li key={quantity.id}>
             <button

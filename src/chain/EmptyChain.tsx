@@ -14,7 +14,7 @@ export function EmptyChain() {
   const { mayEdit } = useChain();
   const scale: Scale = 'plant';
   return (
-    <div className="grid h-full content-start justify-items-center overflow-y-auto bg-paper px-4 py-10">
+    <div className="grid h-full content-start justify-items-center relative overflow-y-auto bg-paper px-4 py-10">
       <div className="grid w-full max-w-xl gap-4 border-2 border-rule bg-surface p-6">
         <h2 className="text-xl leading-tight font-bold">Start from the quantity the plant needs</h2>
         {mayEdit.allowed ? (

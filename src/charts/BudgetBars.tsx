@@ -54,7 +54,7 @@ export function BudgetBars({ result, unit }: { readonly result: MeasuredResult; 
       )}
       <details>
         <summary className="min-h-7 cursor-pointer text-xs text-ink-2">Show as table</summary>
-        <div className="overflow-x-auto">
+        <div className="relative overflow-x-auto">
           <table className="w-full text-xs">
             <caption className="pb-1 text-left text-ink-2">
               Standard uncertainties, all in coherent SI; contributions in {unit || '1'}

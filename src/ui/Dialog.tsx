@@ -41,7 +41,7 @@ export function Dialog({
           </svg>
         </button>
       </div>
-      <div className="max-h-[75vh] overflow-y-auto p-4">{children}</div>
+      <div className="max-h-[75vh] relative overflow-y-auto p-4">{children}</div>
     </dialog>
   );
 }

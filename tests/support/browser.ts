@@ -33,7 +33,7 @@ export async function visit(
 ): Promise<Visitor> {
   const context = await browser.newContext({ viewport: { width, height }, colorScheme: theme, baseURL: address });
   const page = await context.newPage();
-  page.setDefaultTimeout(15_000);
+  page.setDefaultTimeout(30_000);
   const complaints: string[] = [];
   page.on('console', (message) => {
     // Chromium itself reports each refused request; what the app makes of it is what counts.
@@ -58,7 +58,9 @@ const standards = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'];
 export async function accessibilityFaults(page: Page): Promise<string[]> {
   const { violations } = await new AxeBuilder({ page }).withTags(standards).analyze();
   return violations.flatMap((violation) =>
-    violation.nodes.map((node) => `${violation.id}: ${node.target.join(' ')} (${node.failureSummary ?? violation.help})`),
+    violation.nodes.map(
+      (node) => `${violation.id}: ${node.target.join(' ')} (${node.failureSummary ?? violation.help})`,
+    ),
   );
 }
 

@@ -34,7 +34,7 @@ export function Inspector({
   return (
     <aside
       aria-labelledby="inspector-heading"
-      className="min-h-0 overflow-y-auto border-rule bg-paper print:hidden max-md:border-t-2 md:border-l"
+      className="min-h-0 relative overflow-y-auto border-rule bg-paper print:hidden max-md:border-t-2 md:border-l"
       onKeyDown={(event) => {
         if (event.key === 'Escape' && !event.defaultPrevented) onClose();
       }}

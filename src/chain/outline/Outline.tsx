@@ -59,7 +59,7 @@ export function Outline({ onOpen }: { readonly onOpen: (id: string) => void }) {
   }
 
   return (
-    <div className="grid content-start gap-3 overflow-auto p-4">
+    <div className="grid content-start gap-3 relative overflow-auto p-4">
       <label className="flex flex-wrap items-center gap-2 text-sm">
         <span className="font-semibold">Start from</span>
         <select
@@ -82,7 +82,7 @@ export function Outline({ onOpen }: { readonly onOpen: (id: string) => void }) {
           {new Set(rows.map((row) => row.quantityId)).size} of {model.quantities.length} quantities shown
         </span>
       </label>
-      <div className="overflow-x-auto border border-rule bg-surface">
+      <div className="relative overflow-x-auto border border-rule bg-surface">
         {/* biome-ignore lint/a11y/noNoninteractiveElementToInteractiveRole: a tree table; its cells take the role of grid cells from it */}
         <table role="treegrid" aria-label="What the quantity comes from" className="w-full text-sm">
           <thead>

@@ -121,7 +121,7 @@ function Entry({ entry }: { readonly entry: LogEntry }) {
             <summary className="min-h-7 cursor-pointer text-sm text-primary underline">Before and after</summary>
             {isOpen &&
               items.map((item) => (
-                <div key={item.title} className="my-2 overflow-x-auto">
+                <div key={item.title} className="my-2 relative overflow-x-auto">
                   <table className="w-full border border-line text-sm">
                     <caption className="py-1 text-left font-semibold">{item.title}</caption>
                     <thead>

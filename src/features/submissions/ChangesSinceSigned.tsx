@@ -30,7 +30,7 @@ export function ChangesSinceSigned({ submission }: { readonly submission: Submis
         </span>
       </h2>
       {rows.length > 0 && (
-        <div className="overflow-x-auto">
+        <div className="relative overflow-x-auto">
           <table className="w-full border border-rule bg-surface text-sm">
             <caption className="sr-only">Numbers that differ from what was signed last</caption>
             <thead>

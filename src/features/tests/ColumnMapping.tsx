@@ -27,7 +27,7 @@ export function ColumnMapping({
   }
 
   return (
-    <div className="overflow-x-auto">
+    <div className="relative overflow-x-auto">
       <table className="w-full min-w-120 text-sm">
         <caption className="sr-only">Columns of the file and their units</caption>
         <thead>
@@ -99,7 +99,7 @@ export function RawBesideRead({
   const readings: readonly Reading[] = file?.ok ? file.readings.slice(0, shownRows) : [];
   return (
     <div className="grid gap-4 lg:grid-cols-2">
-      <div className="overflow-x-auto border border-rule bg-surface">
+      <div className="relative overflow-x-auto border border-rule bg-surface">
         <table className="w-full text-xs">
           <caption className="border-b border-rule p-2 text-left font-semibold">As it stands in the file</caption>
           <thead>
@@ -127,7 +127,7 @@ export function RawBesideRead({
           </tbody>
         </table>
       </div>
-      <div className="overflow-x-auto border border-rule bg-surface">
+      <div className="relative overflow-x-auto border border-rule bg-surface">
         {readings.length > 0 ? (
           <ReadingsTable
             readings={readings}

@@ -112,7 +112,7 @@ function Shown({ study, test }: { readonly study: Study; readonly test: Test }) 
         {readings.isPending && <Loading what="the readings" />}
         {readings.data && (
           <section
-            className="max-h-120 overflow-auto border border-rule bg-surface"
+            className="max-h-120 relative overflow-auto border border-rule bg-surface"
             // biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable by keyboard
             tabIndex={0}
             aria-label="All readings"

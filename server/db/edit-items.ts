@@ -1,4 +1,5 @@
-import { and, eq, inArray } from 'drizzle-orm';
+import { and, eq, sql } from 'drizzle-orm';
+import * as z from 'zod';
 import type { ChainEdit } from '../../shared/api/studies.ts';
 import { type ChainChange, chainItemSchema } from '../../shared/domain/audit-events.ts';
 import { mayMove, routeMoves } from '../../shared/domain/route-lifecycle.ts';
@@ -6,7 +7,8 @@ import { checkModel } from '../../shared/engine/evaluate/check-model.ts';
 import { upstreamOf } from '../../shared/engine/evaluate/upstream.ts';
 import type { StudyModel } from '../../shared/engine/model/study-model.ts';
 import { Problem } from '../http/problem.ts';
-import type { Transaction } from './database.ts';
+import type { Reader, Transaction } from './database.ts';
+import { auditEntry } from './schema/decision-log.ts';
 import { chainItems, routeStates } from './schema/studies.ts';
 import { submissions } from './schema/submissions.ts';
 import { assembleModel, type ItemRow, type RouteStateRow, readItems, readRouteStates } from './study-reads.ts';
@@ -181,12 +183,18 @@ export async function editItems(
   return { model, changes, itemRevisions };
 }
 
-/** Who last edited each of the items. */
-export async function lastEditors(tx: Transaction, studyId: string, ids: readonly string[]): Promise<string[]> {
-  if (ids.length === 0) return [];
-  const rows = await tx
-    .selectDistinct({ personId: chainItems.lastEditedBy })
-    .from(chainItems)
-    .where(and(eq(chainItems.studyId, studyId), inArray(chainItems.id, [...ids])));
-  return rows.map((row) => row.personId);
+const touchedSchema = z.array(z.string());
+
+/** Everybody who ever edited one of the items, by the decision log: also those whose edit was edited over since. */
+export async function editorsOf(reader: Reader, studyId: string, ids: readonly string[]): Promise<string[]> {
+  const edits = await reader
+    .select({
+      personId: auditEntry.actorId,
+      touched: sql<string>`JSON_EXTRACT(${auditEntry.payload}, '$.event.changes[*].id')`,
+    })
+    .from(auditEntry)
+    .where(and(eq(auditEntry.chain, studyId), eq(auditEntry.kind, 'chain.edited')));
+  const wanted = new Set(ids);
+  const editors = edits.filter(({ touched }) => touchedSchema.parse(JSON.parse(touched)).some((id) => wanted.has(id)));
+  return [...new Set(editors.map((edit) => edit.personId))];
 }

@@ -42,7 +42,7 @@ export const submissionSchema = z.object({
   signedBefore: snapshotSchema.nullable(),
   /** The chain moved after submission: names of what differs now. */
   movedSince: z.array(z.string()),
-  /** Everybody who edited something in the package since it was last signed; none of them may sign. */
+  /** Everybody who ever edited something in the package, and who submitted it; none of them may sign. */
   authorIds: z.array(z.string()),
   rulings: z.array(
     z.object({

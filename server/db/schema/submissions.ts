@@ -36,7 +36,7 @@ export const submissionRoutes = mysqlTable(
   (table) => [primaryKey({ columns: [table.submissionId, table.routeId] })],
 );
 
-/** Who edited something in the package since it was last signed: none of them may sign. */
+/** Who ever edited something in the package, and who submitted it: none of them may sign. */
 export const submissionAuthors = mysqlTable(
   'submission_authors',
   {

@@ -1,6 +1,7 @@
 import { editChain } from '../../../shared/api/studies.ts';
 import { canEdit } from '../../../shared/domain/study-policy.ts';
 import { editItems } from '../../db/edit-items.ts';
+import { requireAsMeasured } from '../../db/measured-tests.ts';
 import {
   describeRouteStates,
   lockStudy,
@@ -15,6 +16,7 @@ export const editChainCommand = defineCommand(editChain, async ({ actor, params,
   requireReadable(actor, params.studyId);
   requireAllowed(canEdit(actor, params.studyId));
   const study = await lockStudy(tx, params.studyId);
+  await requireAsMeasured(tx, study.id, body.edits);
   const { model, changes, itemRevisions } = await editItems(tx, study.id, body.edits, {
     personId: actor.personId,
     reason: body.reason,

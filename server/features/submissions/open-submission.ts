@@ -7,7 +7,7 @@ import { sliceModel, upstreamOf } from '../../../shared/engine/evaluate/upstream
 import type { StudyEvaluation } from '../../../shared/engine/model/evaluation.ts';
 import type { StudyModel } from '../../../shared/engine/model/study-model.ts';
 import { canonicalJson, sha256 } from '../../db/canonical-json.ts';
-import { lastEditors } from '../../db/edit-items.ts';
+import { editorsOf } from '../../db/edit-items.ts';
 import { routeStates } from '../../db/schema/studies.ts';
 import { submissionAuthors, submissionRoutes, submissions } from '../../db/schema/submissions.ts';
 import {
@@ -112,8 +112,8 @@ export const openSubmissionCommand = defineCommand(openSubmission, async ({ acto
   };
   await tx.insert(submissions).values(row);
   await tx.insert(submissionRoutes).values(routeIds.map((routeId) => ({ submissionId: row.id, routeId })));
-  const { quantityIds, operatingPointIds, testIds } = upstream;
-  const editors = await lastEditors(tx, study.id, [...routeIds, ...quantityIds, ...operatingPointIds, ...testIds]);
+  const parts = [slice.operatingPoints, slice.quantities, slice.tests, slice.inputCorrelations].flat();
+  const editors = await editorsOf(tx, study.id, [...routeIds, ...parts.map((part) => part.id)]);
   const authors = [...new Set([actor.personId, ...editors])];
   await tx.insert(submissionAuthors).values(authors.map((personId) => ({ submissionId: row.id, personId })));
   await tx

@@ -3,7 +3,7 @@ import { signSubmission } from '../../../shared/api/submissions.ts';
 import { canSign } from '../../../shared/domain/submission-policy.ts';
 import { people } from '../../db/schema/people.ts';
 import { signatures } from '../../db/schema/submissions.ts';
-import { assembleModel, basisHash, readItems } from '../../db/study-reads.ts';
+import { basisHash } from '../../db/study-reads.ts';
 import { describeSubmission, factsOf, lockSubmission } from '../../db/submission-reads.ts';
 import { defineCommand } from '../../http/handler.ts';
 import { passwordMatches } from '../../http/password.ts';
@@ -50,8 +50,8 @@ export const signSubmissionCommand = defineCommand(signSubmission, async ({ acto
     snapshotHash: row.snapshotHash,
     signedAt: at,
   });
-  const model = assembleModel(await readItems(tx, study.id));
-  const { routeIds } = row.snapshot;
+  // Of what is signed, not of the chain as it is now: a route added beside it during the review is a changed basis.
+  const { model, routeIds } = row.snapshot;
   const closed = await closeSubmission(tx, study, row, {
     status: 'signed',
     byPerson: actor.personId,

@@ -1,4 +1,4 @@
-import { desc, eq, inArray } from 'drizzle-orm';
+import { and, desc, eq, inArray } from 'drizzle-orm';
 import { getWorkList, type WorkItem } from '../../../shared/api/work-list.ts';
 import { studySubject } from '../../../shared/domain/ability.ts';
 import { people } from '../../db/schema/people.ts';
@@ -41,7 +41,8 @@ const getWorkListQuery = defineQuery(getWorkList, async ({ actor, reader }) => {
     })
     .from(rulings)
     .innerJoin(submissions, eq(submissions.id, rulings.submissionId))
-    .where(inArray(submissions.studyId, ids));
+    // A condition binds once the submission is signed; one of a returned package was never met with.
+    .where(and(inArray(submissions.studyId, ids), eq(submissions.status, 'signed')));
   const signed = await reader
     .select({
       submissionId: signatures.submissionId,

@@ -116,6 +116,7 @@ type AnyNode = MathNode & {
   readonly value?: unknown;
   readonly name?: unknown;
   readonly fn?: unknown;
+  readonly implicit?: unknown;
   readonly args?: MathNode[];
   readonly content?: MathNode;
 };
@@ -145,6 +146,11 @@ function admit(node: MathNode, budget: { nodes: number }, depth: number): Formul
       const [left, right] = given.args ?? [];
       if (given.fn === 'unaryMinus' && left) return { kind: 'negative', of: next(left) };
       if (given.fn === 'unaryPlus' && left) return next(left);
+      if (given.implicit === true) {
+        throw new Refusal(
+          'A product needs its *: write a * b and not a b, so that what stands below a / is plain to see.',
+        );
+      }
       const sign = operators[String(given.fn)];
       if (sign && left && right) return { kind: 'operation', sign, left: next(left), right: next(right) };
       break;

@@ -60,10 +60,27 @@ const row = (...parts: string[]) => `<mrow>${parts.join('')}</mrow>`;
 const bracketed = (inner: string) => row('<mo>(</mo>', inner, '<mo>)</mo>');
 const isSum = (tree: FormulaTree) => tree.kind === 'operation' && (tree.sign === '+' || tree.sign === '-');
 
+/** What stands first on the line: a minus there would read as a subtraction, a digit would join the one before. */
+function firstOf(tree: FormulaTree): FormulaTree {
+  if (tree.kind !== 'operation' || tree.sign === '/') return tree;
+  if (tree.sign === '^') return tree.left.kind === 'number' ? tree.left : tree;
+  return firstOf(tree.left);
+}
+const startsWithMinus = (tree: FormulaTree) => firstOf(tree).kind === 'negative';
+const startsWithNumber = (tree: FormulaTree) => firstOf(tree).kind === 'number';
+
+function numberMarkup(value: number): string {
+  if (value === Math.PI) return '<mi mathvariant="normal">π</mi>';
+  const [mantissa, exponent] = String(value).split('e');
+  if (exponent === undefined) return `<mn>${value}</mn>`;
+  const power = exponent.replace('+', '').replace('-', '−');
+  return row(`<mn>${mantissa}</mn>`, '<mo>×</mo>', `<msup><mn>10</mn><mn>${power}</mn></msup>`);
+}
+
 function markup(tree: FormulaTree): string {
   switch (tree.kind) {
     case 'number':
-      return tree.value === Math.PI ? '<mi mathvariant="normal">π</mi>' : `<mn>${tree.value}</mn>`;
+      return numberMarkup(tree.value);
     case 'variable':
       return symbol(tree.name);
     case 'negative':
@@ -93,15 +110,16 @@ function operationMarkup({ sign, left, right }: Extract<FormulaTree, { kind: 'op
     case '/':
       return `<mfrac>${row(markup(left))}${row(markup(right))}</mfrac>`;
     case '^': {
-      const isPlain = left.kind === 'variable' || left.kind === 'number';
+      const isPlain = left.kind === 'variable' || (left.kind === 'number' && !String(left.value).includes('e'));
       return `<msup>${isPlain ? row(markup(left)) : bracketed(markup(left))}${row(flat(right))}</msup>`;
     }
     case '*': {
       const part = (tree: FormulaTree) => (isSum(tree) ? bracketed(markup(tree)) : markup(tree));
-      return row(part(left), right.kind === 'number' ? '<mo>·</mo>' : '<mo>&#x2009;</mo>', part(right));
+      const join = startsWithNumber(right) && !isSum(right) ? '<mo>·</mo>' : '<mo>&#x2009;</mo>';
+      return row(part(left), join, startsWithMinus(right) && !isSum(right) ? bracketed(markup(right)) : part(right));
     }
     default: {
-      const needsBrackets = sign === '-' && isSum(right);
+      const needsBrackets = (sign === '-' && isSum(right)) || startsWithMinus(right);
       return row(
         markup(left),
         `<mo>${sign === '-' ? '−' : '+'}</mo>`,

@@ -18,6 +18,7 @@ import { levequeMass } from './pipe/leveque-mass.ts';
 import { lintonSherwood } from './pipe/linton-sherwood.ts';
 import { petukhov } from './pipe/petukhov.ts';
 import { siederTateTurbulent } from './pipe/sieder-tate-turbulent.ts';
+import { eisenberg } from './rotating/eisenberg.ts';
 
 /** Every method of the library, in the order in which a picker lists them. */
 export const methods: readonly Method[] = [
@@ -39,6 +40,7 @@ export const methods: readonly Method[] = [
   froessling,
   wakaoFunazkri,
   wakaoKaguei,
+  eisenberg,
   chiltonColburn,
 ];
 

@@ -1,4 +1,5 @@
 import type { Uncertainty } from '../model/study-model.ts';
+import { formatNumber } from './format-measured.ts';
 import { describeDimension, differenceToSi, parseUnit, sameDimension, toSi, type Unit } from './parse-unit.ts';
 import { readTypedNumber } from './read-typed-number.ts';
 
@@ -41,8 +42,16 @@ export function parseQuantity(text: string, shownUnit: string): QuantityReading 
   const unit = unitFor(typed.rest, shownUnit);
   if (!unit.ok) return unit;
   const value = toSi(typed.value, unit.unit);
-  const isTemperature = unit.unit.offset !== 0;
-  if (isTemperature && value < -1e-9) {
+  const shown = parseUnit(shownUnit);
+  const isShownOnScale = shown.ok && shown.unit.offset !== 0;
+  if (unit.unit.offset !== 0 && !isShownOnScale) {
+    const [point, difference] = [value, differenceToSi(typed.value, unit.unit)].map((x) => formatNumber(x, 6));
+    return {
+      ok: false,
+      reason: `"${text.trim()}" can be a temperature, ${point} K, or a difference, ${difference} K. Write it in K.`,
+    };
+  }
+  if (isShownOnScale && value < -1e-9) {
     return { ok: false, reason: `${text.trim()} is below absolute zero (−273.15 °C). Check the sign and the unit.` };
   }
   return { ok: true, value, unit: typed.rest === '' ? shownUnit : typed.rest, number: typed.value };
@@ -66,6 +75,11 @@ export function parseUncertainty(
   if (!typed.ok) return typed;
   if (typed.value < 0) return { ok: false, reason: 'An uncertainty is zero or more.' };
   const isRelative = typed.rest === '%' && isNotInPercent(shownUnit);
+  const shown = parseUnit(shownUnit);
+  if ((isRelative || form === 'relative') && shown.ok && shown.unit.offset !== 0) {
+    const reason = 'A share of a temperature depends on the zero of its scale. Give an amount, for example 0.2 K.';
+    return { ok: false, reason };
+  }
 
   if (form === 'relative') {
     if (typed.rest !== '%' && typed.rest !== '')

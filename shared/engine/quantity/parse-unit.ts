@@ -70,7 +70,7 @@ function readUnit(text: string): UnitReading {
   if (text.length > 60) return { ok: false, reason: 'A unit has at most 60 characters.' };
   for (const { pattern, reason } of refusals)
     if (pattern.test(text)) return { ok: false, reason: `"${text}" ${reason}` };
-  const bare = temperatureScales[text.replace('℃', '°C').replace(/^deg ?/, '°')];
+  const bare = temperatureScale(text.replace('℃', '°C').replace(/^deg ?/, '°'));
   if (bare) return { ok: true, unit: { text, dimension: kelvin, ...bare } };
   return combine(text);
 }
@@ -81,11 +81,16 @@ const temperatureScales: Readonly<Record<string, { factor: number; offset: numbe
   '°F': { factor: 5 / 9, offset: 459.67 * (5 / 9) },
 };
 
+/** Only names of its own: "constructor" is in every object. */
+function temperatureScale(name: string): { factor: number; offset: number } | undefined {
+  return Object.hasOwn(temperatureScales, name) ? temperatureScales[name] : undefined;
+}
+
 /** Factor and dimension of one name, such as `mPa`; null when nobody knows it. */
 function oneUnit(name: string): readonly [number, Dimension] | null {
   if (Object.hasOwn(ownFactors, name)) return ownFactors[name] ?? null;
   // In a product a degree is a difference: a kelvin, or 5/9 of one.
-  const scale = temperatureScales[name];
+  const scale = temperatureScale(name);
   if (scale) return [scale.factor, kelvin];
   try {
     const unit = math.unit(1, name) as unknown as { value: number; dimensions: number[] };

@@ -21,7 +21,7 @@ type Facts = {
 const folder = join(import.meta.dirname, '../../reference/methods');
 const all = readdirSync(folder).map((file): Facts => JSON.parse(readFileSync(join(folder, file), 'utf8')));
 
-function valueOf(method: Method, inputs: Readonly<Record<string, number>>): number {
+function valueAt(method: Method, inputs: Readonly<Record<string, number>>): number {
   const read = parseFormula(method.expression);
   if (!read.ok) throw new Error(read.reason);
   return read.formula.evaluate(read.formula.variables.map((name) => inputs[name] ?? Number.NaN)).value;
@@ -30,7 +30,7 @@ function valueOf(method: Method, inputs: Readonly<Record<string, number>>): numb
 /** The limits of the window that these inputs break; a limit on a length ratio is read from its variable. */
 function brokenLimits(method: Method, inputs: Readonly<Record<string, number>>): string[] {
   return method.window.flatMap(({ group, min, max, expression }) => {
-    const read = parseFormula(expression ?? group.replaceAll('/', '_over_').replace('L_over_d', 'L_over_d'));
+    const read = parseFormula(expression ?? group.replaceAll('/', '_over_'));
     if (!read.ok) throw new Error(read.reason);
     const value = read.formula.evaluate(read.formula.variables.map((name) => inputs[name] ?? Number.NaN)).value;
     if (Number.isNaN(value)) return [];
@@ -43,7 +43,7 @@ describe.each(all)('$method', ({ method: id, records }) => {
   if (!method) throw new Error(`The library has no method ${id}.`);
 
   it.each(records.map((record) => [record.id, record] as const))('gives the published value %s', (_, record) => {
-    const relative = Math.abs(valueOf(method, record.inputs) / record.expected - 1);
+    const relative = Math.abs(valueAt(method, record.inputs) / record.expected - 1);
 
     expect(relative).toBeLessThanOrEqual(record.relativeTolerance);
   });
@@ -64,13 +64,16 @@ describe('every method of the library', () => {
   it.each(methods.map((method) => [method.id, method] as const))('%s gives its own check values', (_, method) => {
     expect(method.checks.length).toBeGreaterThan(0);
     for (const check of method.checks) {
-      expect(Math.abs(valueOf(method, check.given) / check.gives - 1)).toBeLessThanOrEqual(check.relativeTolerance);
+      expect(Math.abs(valueAt(method, check.given) / check.gives - 1)).toBeLessThanOrEqual(check.relativeTolerance);
     }
   });
 
-  it.each(methods.map((method) => [method.id, method] as const))('%s names the variables of its formula', (_, method) => {
-    const read = parseFormula(method.expression);
+  it.each(methods.map((method) => [method.id, method] as const))(
+    '%s names the variables of its formula',
+    (_, method) => {
+      const read = parseFormula(method.expression);
 
-    expect(read.ok && [...read.formula.variables].sort()).toEqual(Object.keys(method.variables).sort());
-  });
+      expect(read.ok && [...read.formula.variables].sort()).toEqual(Object.keys(method.variables).sort());
+    },
+  );
 });

@@ -1,3 +1,5 @@
+import { readFileSync } from 'node:fs';
+import { join } from 'node:path';
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, expect, it } from 'vitest';
 import { outbox } from '../../server/db/schema/outbox.ts';
@@ -5,7 +7,7 @@ import { people } from '../../server/db/schema/people.ts';
 import { studies } from '../../server/db/schema/studies.ts';
 import { submissions } from '../../server/db/schema/submissions.ts';
 import { verifyChain } from '../../server/db/verify-chain.ts';
-import { demoPeople } from '../../server/scripts/demo/people.ts';
+import { demoPassword, demoPeople } from '../../server/scripts/demo/people.ts';
 import { seedDemo } from '../../server/scripts/demo/seed-demo.ts';
 import { type FreshDatabase, freshDatabase } from '../support/test-database.ts';
 
@@ -50,4 +52,11 @@ it('leaves decision logs that verify, and mails that only wait to be sent', asyn
   for (const chain of chains) expect((await verifyChain(fresh.db, chain)).broken).toBeNull();
   const waiting = await fresh.db.select().from(outbox).where(eq(outbox.attempts, 0));
   expect(waiting.map((mail) => mail.kind)).toContain('submission-signed');
+});
+
+it('README names every demo account and the password they share', () => {
+  const readme = readFileSync(join(import.meta.dirname, '../../README.md'), 'utf8');
+
+  expect(readme).toContain(`\`${demoPassword}\``);
+  for (const { name, email } of Object.values(demoPeople)) expect(readme).toContain(`| ${name} | \`${email}\` |`);
 });

@@ -20,8 +20,8 @@ export type DatabaseAddress = {
  * How long a connection in use may say nothing before it counts as lost. MariaDB gives up a statement one second
  * earlier, so only a server that hangs or is cut off gets this far. A request then ends within ten seconds.
  */
-const silenceMs = 6000;
-const statementSeconds = 5;
+const silenceMs = 5000;
+const statementSeconds = 4;
 const lockWaitSeconds = 3;
 
 /** Of a connection over TCP; the driver's types leave it out. */

@@ -4,6 +4,7 @@ import { defineConfig } from 'vitest/config';
 
 export default defineConfig({
   plugins: [react(), tailwindcss()],
+  publicDir: 'src/public',
   // Replaced by a fresh nonce in every answer; see server/http/pages.ts.
   html: { cspNonce: 'STEMMA-NONCE' },
   build: {

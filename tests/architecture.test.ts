@@ -182,6 +182,7 @@ describe('the house', () => {
       maildev: 'started as a program by server/scripts/mail-catcher.ts',
       tsx: 'runs the TypeScript of the server; loaded by server/scripts/bootstrap.mjs',
       typescript: 'npm run types',
+      '@testing-library/dom': 'what @testing-library/react stands on',
       jsdom: 'the environment of the jsdom project in vite.config.ts',
       knip: 'npm run unused',
       '@biomejs/biome': 'npm run lint',

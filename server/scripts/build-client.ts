@@ -10,7 +10,7 @@ const stampFile = join(root, 'dist/.inputs');
 
 function hashOfInputs(): string {
   const files = ['index.html', 'vite.config.ts', 'tsconfig.json', 'package-lock.json'];
-  for (const folder of ['src', 'shared', 'public']) {
+  for (const folder of ['src', 'shared']) {
     if (!existsSync(join(root, folder))) continue;
     const found = readdirSync(join(root, folder), { recursive: true, encoding: 'utf8' });
     files.push(...found.sort().map((file) => join(folder, file)));

@@ -6,7 +6,7 @@ import { roleNames, type StudyRole, studyRoles } from '../../../shared/domain/ab
 import { canManageMembers } from '../../../shared/domain/study-policy.ts';
 import { call } from '../../api/call.ts';
 import { useAsking } from '../../api/session.ts';
-import { StudyHeader } from '../../study/StudyHeader.tsx';
+import { StudyHeader } from '../../ui/StudyHeader.tsx';
 import { ActionButton } from '../../ui/ActionButton.tsx';
 import { Button } from '../../ui/Button.tsx';
 import { Field } from '../../ui/Field.tsx';

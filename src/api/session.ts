@@ -2,8 +2,6 @@ import { queryOptions, useQuery } from '@tanstack/react-query';
 import { createContext, useContext } from 'react';
 import type { Reply } from '../../shared/api/endpoint.ts';
 import { getSession } from '../../shared/api/session.ts';
-import { abilityOf } from '../../shared/domain/ability.ts';
-import type { Asking } from '../../shared/domain/study-policy.ts';
 import { call } from './call.ts';
 
 export const sessionQuery = queryOptions({
@@ -22,12 +20,6 @@ export function useActor(): SessionActor {
   const actor = useContext(ActorContext);
   if (!actor) throw new Error('This page is shown to people who are signed in.');
   return actor;
-}
-
-/** The same with the ability that policies ask. */
-export function useAsking(): Asking {
-  const actor = useActor();
-  return { ...actor, ability: abilityOf(actor) };
 }
 
 export function useSession() {

@@ -4,8 +4,7 @@ import { useParams, useSearchParams } from 'react-router-dom';
 import { type LogEntry, listLogEntries, verifyLog } from '../../../shared/api/decision-log.ts';
 import { canVerify } from '../../../shared/domain/study-policy.ts';
 import { call } from '../../api/call.ts';
-import { useAsking } from '../../api/session.ts';
-import { StudyHeader } from '../../ui/StudyHeader.tsx';
+import { useAsking } from '../../api/use-asking.ts';
 import { ActionButton } from '../../ui/ActionButton.tsx';
 import { Button } from '../../ui/Button.tsx';
 import { Field } from '../../ui/Field.tsx';
@@ -13,6 +12,7 @@ import { Loading } from '../../ui/Loading.tsx';
 import { Moment } from '../../ui/Moment.tsx';
 import { Page } from '../../ui/Page.tsx';
 import { ProblemNote } from '../../ui/ProblemNote.tsx';
+import { StudyHeader } from '../../ui/StudyHeader.tsx';
 import { beforeAndAfter } from './before-after.ts';
 import { entrySentence, studyEventNames } from './entry-sentence.ts';
 

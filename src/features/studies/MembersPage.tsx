@@ -5,14 +5,14 @@ import { addMember, getStudy, removeMember } from '../../../shared/api/studies.t
 import { roleNames, type StudyRole, studyRoles } from '../../../shared/domain/ability.ts';
 import { canManageMembers } from '../../../shared/domain/study-policy.ts';
 import { call } from '../../api/call.ts';
-import { useAsking } from '../../api/session.ts';
-import { StudyHeader } from '../../ui/StudyHeader.tsx';
+import { useAsking } from '../../api/use-asking.ts';
 import { ActionButton } from '../../ui/ActionButton.tsx';
 import { Button } from '../../ui/Button.tsx';
 import { Field } from '../../ui/Field.tsx';
 import { Loading } from '../../ui/Loading.tsx';
 import { Page } from '../../ui/Page.tsx';
 import { ProblemNote } from '../../ui/ProblemNote.tsx';
+import { StudyHeader } from '../../ui/StudyHeader.tsx';
 
 const membersQuery = (studyId: string) =>
   queryOptions({

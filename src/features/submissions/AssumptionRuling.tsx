@@ -3,7 +3,7 @@ import type { Submission } from '../../../shared/api/submissions.ts';
 import { type Ruling, rulingWords } from '../../../shared/domain/audit-events.ts';
 import { canRule } from '../../../shared/domain/submission-policy.ts';
 import type { Assumption, MatchCheck } from '../../../shared/engine/model/evaluation.ts';
-import { useAsking } from '../../api/session.ts';
+import { useAsking } from '../../api/use-asking.ts';
 import { LogWindow, VerdictMark } from '../../charts/LogWindow.tsx';
 import { Button } from '../../ui/Button.tsx';
 import { Field } from '../../ui/Field.tsx';

@@ -1,7 +1,7 @@
 import { useState } from 'react';
 import { type Submission, signatureMeanings } from '../../../shared/api/submissions.ts';
 import { canReturn, canRule, canSign, canWithdraw, countRulings } from '../../../shared/domain/submission-policy.ts';
-import { useAsking } from '../../api/session.ts';
+import { useAsking } from '../../api/use-asking.ts';
 import { ActionButton } from '../../ui/ActionButton.tsx';
 import { Field } from '../../ui/Field.tsx';
 import { Moment } from '../../ui/Moment.tsx';

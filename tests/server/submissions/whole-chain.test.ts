@@ -1,164 +1,66 @@
-import { eq } from 'drizzle-orm';
-import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
-import { signatures } from '../../../server/db/schema/submissions.ts';
-import { returnSubmission, type Submission, withdrawSubmission } from '../../../shared/api/submissions.ts';
+import { afterAll, beforeAll, expect, it } from 'vitest';
+import { canonicalJson, sha256 } from '../../../server/db/canonical-json.ts';
+import { verifyLog } from '../../../shared/api/decision-log.ts';
+import { evaluateStudy } from '../../../shared/engine/evaluate/evaluate-study.ts';
+import { analogueChain, analogueChainIds, expectedAnalogueChain as expected } from '../../reference/analogue-chain.ts';
 import {
   acceptAll,
-  assumptionsOf,
+  asEdits,
   edit,
   gatherTeam,
-  logOf,
-  owedFor,
-  type SmallChain,
+  newStudy,
   seen,
   seenSubmission,
   send,
   sign,
-  studyInReview,
+  submit,
   type Team,
 } from '../../support/study-team.ts';
 import { startTestApp, type TestApp } from '../../support/test-app.ts';
 
 let app: TestApp;
 let team: Team;
-let studyId: string;
-let chain: SmallChain;
-let submission: Submission;
 
 beforeAll(async () => {
   app = await startTestApp();
   team = await gatherTeam(app);
 });
 afterAll(() => app.stop());
-beforeEach(async () => {
-  ({ studyId, chain, submission } = await studyInReview(team));
-});
 
-const statusesOf = async () => {
+it('goes from entered numbers to a signed time that stands, also in the log, while the chain moves on', async () => {
+  const studyId = await newStudy(team);
+  const chain = analogueChain();
+  const { routes: evaluated } = evaluateStudy(chain);
+  const routes = chain.routes.map((route) => {
+    const asked = (evaluated[route.id]?.assumptions ?? []).filter((assumption) => assumption.needsJustification);
+    return { ...route, justifications: Object.fromEntries(asked.map(({ key }) => [key, 'Same rig, same range.'])) };
+  });
+  expect((await send(team.engineer, studyId, asEdits({ ...chain, routes }))).status).toBe(200);
+  const submitted = await submit(team.engineer, studyId, { id: analogueChainIds.dissolutionTime });
+  expect(submitted.status).toBe(200);
+  await acceptAll(team.manager, submitted.body);
+
+  const signed = await sign(team.manager, submitted.body);
+
+  expect(signed.body).toMatchObject({ status: 'signed', signatures: [{ snapshotHash: submitted.body.snapshotHash }] });
+  const after = await seen(team.engineer, studyId);
+  expect(Object.values(after.routeStates).map(({ status }) => status)).toEqual(routes.map(() => 'approved'));
+
+  const upstream = routes.find(({ kind, name }) => kind === 'stated-value' && name.startsWith('heater power'));
+  if (!upstream) throw new Error('The chain has no heater power.');
+  const moved = [edit('route', { ...upstream, rationale: 'New calibration.' }, 1)];
+  expect((await send(team.colleague, studyId, moved)).status).toBe(400);
+  expect((await send(team.colleague, studyId, moved, 'The meter was calibrated.')).status).toBe(200);
+
   const { routeStates } = await seen(team.engineer, studyId);
-  return [chain.stated.id, chain.balance.id].map((id) => routeStates[id]?.status);
-};
-const signaturesOf = () => app.db.select().from(signatures).where(eq(signatures.submissionId, submission.id));
-const kindsOwed = async () =>
-  (await owedFor(app, submission.id))
-    .filter(({ kind }) => kind !== 'submission-waits')
-    .map(({ kind, recipientId }) => [kind, recipientId]);
+  expect(routeStates[upstream.id]).toMatchObject({ status: 'draft', revision: 2 });
+  expect(routeStates[analogueChainIds.analogueRoute]).toMatchObject({ status: 'approved', basisChanged: true });
 
-describe('signing', () => {
-  it('approves every route, and leaves a signature, a log entry and a mail to the author', async () => {
-    await acceptAll(team.manager, submission);
-
-    const { status, body } = await sign(team.manager, submission);
-
-    expect(status).toBe(200);
-    expect(body.status).toBe('signed');
-    expect(await signaturesOf()).toMatchObject([
-      { signerId: team.manager.person.id, snapshotHash: submission.snapshotHash },
-    ]);
-    expect(await statusesOf()).toEqual(['approved', 'approved']);
-    expect((await logOf(app, studyId)).at(-1)).toMatchObject({
-      actorId: team.manager.person.id,
-      event: { event: 'submission.signed', submissionId: submission.id, snapshotHash: submission.snapshotHash },
-    });
-    expect(await kindsOwed()).toEqual([['submission-signed', team.engineer.person.id]]);
-  });
-
-  it('is not for an engineer, an auditor or an outsider', async () => {
-    await acceptAll(team.manager, submission);
-
-    const replies = [
-      await sign(team.engineer, submission),
-      await sign(team.studyAuditor, submission),
-      await sign(team.outsider, submission),
-    ];
-
-    expect(replies.map((reply) => reply.status)).toEqual([403, 403, 404]);
-    expect(replies[0]?.problem.sentence).toMatch(/Only a technical manager of this study may sign/);
-    expect(await signaturesOf()).toEqual([]);
-  });
-
-  it('waits for a ruling on every assumption and says how many are left', async () => {
-    const of = assumptionsOf(submission).length;
-    expect(of).toBeGreaterThan(0);
-
-    const reply = await sign(team.manager, submission);
-
-    expect(reply.status).toBe(403);
-    expect(reply.problem.sentence).toContain(`0 of ${of} have a ruling`);
-    expect(await signaturesOf()).toEqual([]);
-  });
-
-  it('does nothing with a wrong password, nor with the hash of something else', async () => {
-    await acceptAll(team.manager, submission);
-
-    const wrongPassword = await sign(team.manager, submission, { password: 'not the password of anybody' });
-    const wrongHash = await sign(team.manager, submission, { snapshotHash: '0'.repeat(64) });
-
-    expect([wrongPassword.status, wrongHash.status]).toEqual([403, 409]);
-    expect(wrongPassword.problem.sentence).toBe('This is not your password, so nothing was signed.');
-    expect(await signaturesOf()).toEqual([]);
-    expect(await statusesOf()).toEqual(['in review', 'in review']);
-    expect((await seenSubmission(team.manager, submission)).status).toBe('open');
-  });
-
-  it('by two managers at the same moment gives one signature', async () => {
-    await acceptAll(team.manager, submission);
-
-    const replies = await Promise.all([sign(team.manager, submission), sign(team.secondManager, submission)]);
-
-    expect(replies.map((reply) => reply.status).sort()).toEqual([200, 403]);
-    expect(await signaturesOf()).toHaveLength(1);
-    expect((await logOf(app, studyId)).filter(({ event }) => event.event === 'submission.signed')).toHaveLength(1);
-  });
-});
-
-describe('a submission that is not signed', () => {
-  it('goes back with comments to the author', async () => {
-    const params = { submissionId: submission.id };
-    const silent = await team.manager.call(returnSubmission, { params, body: { comments: ' ' } });
-    const { status, body } = await team.manager.call(returnSubmission, { params, body: { comments: 'Which sheet?' } });
-
-    expect([silent.status, status]).toEqual([400, 200]);
-    expect(body.outcome?.comments).toBe('Which sheet?');
-    expect(await statusesOf()).toEqual(['returned', 'returned']);
-    expect(await kindsOwed()).toEqual([['submission-returned', team.engineer.person.id]]);
-  });
-
-  it('is withdrawn by its submitter alone', async () => {
-    const call = { params: { submissionId: submission.id }, body: { reason: 'Too early.' } };
-    const byColleague = await team.colleague.call(withdrawSubmission, call);
-    const bySubmitter = await team.engineer.call(withdrawSubmission, call);
-
-    expect([byColleague.status, bySubmitter.status]).toEqual([403, 200]);
-    expect(byColleague.problem.sentence).toBe('Only the person who submitted it may withdraw it.');
-    expect(await statusesOf()).toEqual(['draft', 'draft']);
-    const told = await kindsOwed();
-    expect(told).toHaveLength(2);
-    expect(told).toEqual(expect.arrayContaining([['submission-withdrawn', team.manager.person.id]]));
-  });
-
-  it('keeps what was closed closed', async () => {
-    const call = { params: { submissionId: submission.id }, body: { comments: 'Which sheet?' } };
-    await acceptAll(team.manager, submission);
-    await sign(team.manager, submission);
-
-    const reply = await team.secondManager.call(returnSubmission, call);
-
-    expect(reply.status).toBe(403);
-    expect(reply.problem.sentence).toBe('This submission is signed already.');
-    expect(await statusesOf()).toEqual(['approved', 'approved']);
-  });
-});
-
-it('marks an approved number whose basis changed upstream', async () => {
-  await acceptAll(team.manager, submission);
-  await sign(team.manager, submission);
-
-  const changed = { ...chain.stated, evidence: 'Sheet 8' };
-  const reply = await send(team.engineer, studyId, [edit('route', changed, 1)], 'The sheet was revised.');
-
-  expect(reply.status).toBe(200);
-  const { routeStates } = await seen(team.engineer, studyId);
-  expect(routeStates[chain.stated.id]).toMatchObject({ status: 'draft', revision: 2 });
-  expect(routeStates[chain.balance.id]).toMatchObject({ status: 'approved', basisChanged: true });
+  const { snapshot, snapshotHash } = await seenSubmission(team.manager, submitted.body);
+  expect(sha256(canonicalJson(snapshot))).toBe(snapshotHash);
+  const time = snapshot.evaluation.quantities[analogueChainIds.dissolutionTime]?.result;
+  expect((time?.value ?? Number.NaN) / expected.t.value).toBeCloseTo(1, 6);
+  expect((time?.u ?? Number.NaN) / expected.t.u).toBeCloseTo(1, 6);
+  const verified = await team.studyAuditor.call(verifyLog, { params: { studyId } });
+  expect(verified.body).toMatchObject({ whole: true, broken: null });
 });

@@ -136,7 +136,7 @@ function StudyTable({ studies }: { readonly studies: readonly StudySummary[] }) 
       {studies.map((study) => (
         <li
           key={study.id}
-          className="grid gap-x-6 gap-y-1 border-b border-hair px-3 py-2.5 last:border-b-0 md:grid-cols-[1fr_13rem_17rem]"
+          className="grid gap-x-6 gap-y-1 border-b border-hair px-3 py-2.5 last:border-b-0 md:grid-cols-[1fr_9rem_21rem]"
         >
           <div className="min-w-0">
             <Link to={paths.study(study.id)} className="font-bold text-primary underline">

@@ -1,4 +1,4 @@
-import { randomUUID } from 'node:crypto';
+import { createHash, randomUUID } from 'node:crypto';
 import type { RowDataPacket } from 'mysql2';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { appendEntry } from '../../../server/db/append-entry.ts';
@@ -92,6 +92,21 @@ describe('reading', () => {
 });
 
 describe('verifying', () => {
+  it('hashes the parts of an entry in the layout that is written down, so that others can check a copy', () => {
+    const entry = {
+      chain: 'system',
+      seq: 1,
+      at: '2026-01-05 08:00:00.000000',
+      actorId: '10000000-0000-4000-8000-000000000001',
+      kind: 'person.signed-in',
+      prevHash: Buffer.alloc(32),
+      payloadHash: createHash('sha256').update('{}').digest(),
+    };
+
+    // Made with `printf … | sha256sum` from the table in docs/decisions/0002-decision-log.md.
+    expect(entryHash(entry).toString('hex')).toBe('8df8c359bffc1dfa60fa4dbb3702f32286d39b169e1d4fa00f81a79c60cb6723');
+  });
+
   it('is refused to an engineer of the study, with the reason', async () => {
     const reply = await verify(engineer);
 

@@ -8,6 +8,7 @@ import { inTransaction } from '../../../server/http/run-handler.ts';
 import type { Caller } from '../../../server/scripts/api-caller.ts';
 import { changePerson, invitePerson } from '../../../shared/api/people.ts';
 import { type BuiltPerson, person } from '../../support/builders.ts';
+import { waitForLockWaits } from '../../support/lock-waits.ts';
 import { startTestApp, type TestApp } from '../../support/test-app.ts';
 
 let app: TestApp;
@@ -133,23 +134,12 @@ it('waits for a change that is nearly done instead of refusing', async () => {
   await holder.query('SELECT * FROM people WHERE id = ? FOR UPDATE', [bo.id]);
 
   const waiting = rename('Bo Berg');
-  await waitForLockOn('people');
+  await waitForLockWaits(app.fresh.admin, 1);
   await holder.commit();
   holder.release();
 
   expect((await waiting).status).toBe(200);
 });
-
-/** Until a statement of the server's account waits for a lock. */
-async function waitForLockOn(table: string): Promise<void> {
-  for (;;) {
-    const [rows] = await app.fresh.admin.query<RowDataPacket[]>(
-      "SELECT 1 FROM information_schema.INNODB_LOCKS WHERE lock_table LIKE CONCAT('%', DATABASE(), '%', ?, '%')",
-      [table],
-    );
-    if (rows.length > 0) return;
-  }
-}
 
 it('hands on no connection with an open transaction', async () => {
   await Promise.allSettled(

@@ -5,7 +5,7 @@ import { pino } from 'pino';
 import { createApp } from './app.ts';
 import { unsafeSettings } from './db/check-settings.ts';
 import { openDatabase } from './db/database.ts';
-import { errorForLog } from './db/database-error.ts';
+import { errorForLog, isDatabaseAway } from './db/database-error.ts';
 import { linkLifetimes, makeLink } from './db/make-link.ts';
 import { people } from './db/schema/people.ts';
 import { EnvironmentError, readServerEnvironment, type ServerEnvironment } from './environment.ts';
@@ -16,6 +16,13 @@ import { createMailer } from './notices/mailer.ts';
 /** Lines that are not JSON are shown to whoever started the server; see `scripts/app-server.ts`. */
 function sayToPerson(line: string): void {
   process.stdout.write(`${line}\n`);
+}
+
+function sentencesOf(error: unknown): readonly string[] {
+  if (error instanceof EnvironmentError) return error.sentences;
+  const why = error instanceof Error ? error.message : String(error);
+  if (!isDatabaseAway(error)) return [why];
+  return [`The database cannot be used (${why}). Start it, or correct the variables that begin with STEMMA_DB.`];
 }
 
 async function serve(environment: ServerEnvironment): Promise<void> {
@@ -84,7 +91,6 @@ async function serve(environment: ServerEnvironment): Promise<void> {
 try {
   await serve(readServerEnvironment());
 } catch (error) {
-  const sentences = error instanceof EnvironmentError ? error.sentences : [String(error)];
-  for (const sentence of sentences) sayToPerson(sentence);
+  for (const sentence of sentencesOf(error)) sayToPerson(sentence);
   process.exit(1);
 }

@@ -3,6 +3,7 @@ import express, { type Express, type RequestHandler } from 'express';
 import type { Logger } from 'pino';
 import { pinoHttp } from 'pino-http';
 import type { Database } from './db/database.ts';
+import { Problem } from './db/problem.ts';
 import { decisionLogRoutes } from './features/decision-log/decision-log-routes.ts';
 import { fileRouter } from './features/files/download-file.ts';
 import { peopleRoutes } from './features/people/people-routes.ts';
@@ -16,7 +17,6 @@ import type { Handler, Services } from './http/handler.ts';
 import { mountHandlers } from './http/mount.ts';
 import { requireSameOrigin } from './http/origin-check.ts';
 import { safeHeaders, servePages } from './http/pages.ts';
-import { Problem } from './http/problem.ts';
 import { createSessions } from './http/session.ts';
 import { createThrottle } from './http/throttle.ts';
 

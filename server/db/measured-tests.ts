@@ -2,9 +2,9 @@ import { and, eq } from 'drizzle-orm';
 import type { ChainEdit } from '../../shared/api/studies.ts';
 import { type Test, testSchema } from '../../shared/engine/model/study-model.ts';
 import { summariseReadings } from '../../shared/engine/reductions/steady-heating.ts';
-import { Problem } from '../http/problem.ts';
 import { canonicalJson } from './canonical-json.ts';
 import type { Reader } from './database.ts';
+import { Problem } from './problem.ts';
 import { files, testReadings } from './schema/files.ts';
 
 async function isAsMeasured(reader: Reader, studyId: string, test: Test): Promise<boolean> {

@@ -4,10 +4,10 @@ import { type ChainItem, type ChainItemKind, chainItemSchema } from '../../share
 import type { RouteStatus } from '../../shared/domain/route-lifecycle.ts';
 import { routeInForce, sliceModel } from '../../shared/engine/evaluate/upstream.ts';
 import { emptyStudyModel, type StudyModel } from '../../shared/engine/model/study-model.ts';
-import { Problem } from '../http/problem.ts';
 import type { SignedInActor } from './actor.ts';
 import { canonicalJson, sha256 } from './canonical-json.ts';
 import type { Reader, Transaction } from './database.ts';
+import { Problem } from './problem.ts';
 import { people } from './schema/people.ts';
 import { chainItems, memberships, routeStates, studies } from './schema/studies.ts';
 

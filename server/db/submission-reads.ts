@@ -1,10 +1,10 @@
 import { and, desc, eq, ne } from 'drizzle-orm';
 import type { Submission } from '../../shared/api/submissions.ts';
 import type { SubmissionFacts } from '../../shared/domain/submission-policy.ts';
-import { Problem } from '../http/problem.ts';
 import type { SignedInActor } from './actor.ts';
 import { canonicalJson } from './canonical-json.ts';
 import type { Reader, Transaction } from './database.ts';
+import { Problem } from './problem.ts';
 import { people } from './schema/people.ts';
 import { rulings, signatures, submissionAuthors, submissions } from './schema/submissions.ts';
 import { lockStudy, readItems, requireReadable, type StudyRow } from './study-reads.ts';

@@ -4,7 +4,7 @@ import type { Logger } from 'pino';
 import type * as z from 'zod';
 import type { ProblemBody } from '../../shared/api/problem.ts';
 import { isContention, isDatabaseAway } from '../db/database-error.ts';
-import { Problem } from './problem.ts';
+import { Problem } from '../db/problem.ts';
 
 /** The refusal that zod's issues amount to, field by field: `body.title` -> sentence. */
 export function invalidInput(error: z.ZodError, part: 'params' | 'query' | 'body'): Problem {

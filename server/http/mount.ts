@@ -4,9 +4,9 @@ import type * as z from 'zod';
 import type { Endpoint } from '../../shared/api/endpoint.ts';
 import { loadActor, type SignedInActor } from '../db/actor.ts';
 import type { Database } from '../db/database.ts';
+import { Problem } from '../db/problem.ts';
 import { invalidInput, tooLarge } from './answer-problem.ts';
 import type { Handler, Services, UploadedFile } from './handler.ts';
-import { Problem } from './problem.ts';
 import { inTransaction, runCommand } from './run-handler.ts';
 
 type Context = { readonly db: Database; readonly services: Services };
@@ -14,7 +14,7 @@ type Context = { readonly db: Database; readonly services: Services };
 /** Who is asking, with the roles held at this moment. */
 export async function requireActor(request: Request, db: Database): Promise<SignedInActor> {
   const actor = request.user ? await loadActor(db, request.user.personId) : null;
-  if (!actor) throw new Problem('signed out', 'Sign in to go on.');
+  if (!actor) throw signedOut();
   return actor;
 }
 
@@ -75,7 +75,18 @@ export function addRoute(router: Router, endpoint: Endpoint, ...steps: RequestHa
   const reading: RequestHandler = endpoint.upload
     ? readsUpload(endpoint.upload.maxBytes)
     : express.json({ limit: '2mb', strict: true });
-  router[expressMethod[endpoint.method]](endpoint.path, reading, ...steps);
+  const first = endpoint.access === 'signed in' ? [requireSession, reading] : [reading];
+  router[expressMethod[endpoint.method]](endpoint.path, ...first, ...steps);
+}
+
+/** Before anything is read: whoever is not signed in must not make the server take in a body. */
+const requireSession: RequestHandler = (request, _response, next) => {
+  if (!request.user) throw signedOut();
+  next();
+};
+
+function signedOut(): Problem {
+  return new Problem('signed out', 'Sign in to go on.');
 }
 
 /** Mounts a list of handlers: identify, parse, run, and pass the reply through its schema, which drops the rest. */

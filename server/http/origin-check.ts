@@ -1,5 +1,5 @@
 import type { RequestHandler } from 'express';
-import { Problem } from './problem.ts';
+import { Problem } from '../db/problem.ts';
 
 const harmless = new Set(['GET', 'HEAD', 'OPTIONS']);
 

@@ -1,5 +1,5 @@
 import { RateLimiterMemory, RateLimiterRes } from 'rate-limiter-flexible';
-import { Problem } from './problem.ts';
+import { Problem } from '../db/problem.ts';
 
 /** Counts tries before a password is hashed, so that guessing costs the guesser and not the server. */
 export type Throttle = {

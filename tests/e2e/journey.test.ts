@@ -319,7 +319,10 @@ it('the auditor reads the decision log with before and after, verifies it, and c
     .waitFor();
   const entry = page.getByRole('listitem').filter({ hasText: 'diffusion coefficient at Cooler tube' }).last();
   await entry.getByText('Before and after').click();
-  await entry.getByRole('cell', { name: /6\.5e-10/ }).first().waitFor();
+  await entry
+    .getByRole('cell', { name: /6\.5e-10/ })
+    .first()
+    .waitFor();
   await expectAccessible(page);
 
   await page.getByRole('button', { name: 'Verify the log' }).click();

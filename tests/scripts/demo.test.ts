@@ -23,7 +23,11 @@ afterAll(() => fresh.drop());
 it('has every demo person with a password', async () => {
   const known = await fresh.db.select().from(people);
 
-  expect(known.map((person) => person.email).sort()).toEqual(Object.values(demoPeople).map((one) => one.email).sort());
+  expect(known.map((person) => person.email).sort()).toEqual(
+    Object.values(demoPeople)
+      .map((one) => one.email)
+      .sort(),
+  );
   expect(known.every((person) => person.passwordHash !== null)).toBe(true);
 });
 

@@ -3,11 +3,11 @@ import * as z from 'zod';
 import { listLogEntries, verifyLog } from '../../../shared/api/decision-log.ts';
 import { auditEventSchema } from '../../../shared/domain/audit-events.ts';
 import { canVerify } from '../../../shared/domain/study-policy.ts';
+import { requireAllowed } from '../../db/problem.ts';
 import { auditEntry } from '../../db/schema/decision-log.ts';
 import { requireReadable } from '../../db/study-reads.ts';
 import { verifyChain } from '../../db/verify-chain.ts';
 import { defineCommand, defineQuery, type Handler } from '../../http/handler.ts';
-import { requireAllowed } from '../../http/problem.ts';
 
 const pageSize = 100;
 const payloadSchema = z.object({ actorName: z.string(), event: auditEventSchema });

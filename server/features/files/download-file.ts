@@ -2,10 +2,10 @@ import { and, eq } from 'drizzle-orm';
 import { Router } from 'express';
 import * as z from 'zod';
 import type { Database } from '../../db/database.ts';
+import { Problem } from '../../db/problem.ts';
 import { files } from '../../db/schema/files.ts';
 import { requireReadable } from '../../db/study-reads.ts';
 import { parsePart, requireActor } from '../../http/mount.ts';
-import { Problem } from '../../http/problem.ts';
 
 const paramsSchema = z.object({ studyId: z.uuid(), fileId: z.uuid() });
 

@@ -4,9 +4,9 @@ import { allowed, type Decision, denied } from '../../../shared/domain/decision.
 import type { SignedInActor } from '../../db/actor.ts';
 import { isDuplicate } from '../../db/database-error.ts';
 import { linkLifetimes, makeLink } from '../../db/make-link.ts';
+import { Problem, requireAllowed } from '../../db/problem.ts';
 import { people } from '../../db/schema/people.ts';
 import { defineCommand, defineQuery, type Handler } from '../../http/handler.ts';
-import { Problem, requireAllowed } from '../../http/problem.ts';
 import { normaliseEmail } from '../../http/session.ts';
 import { endSessionsOf } from '../../http/session-store.ts';
 

@@ -1,8 +1,8 @@
 import { and, eq, gt, isNull } from 'drizzle-orm';
 import { sha256 } from '../../db/canonical-json.ts';
 import type { Reader, Transaction } from '../../db/database.ts';
+import { Problem } from '../../db/problem.ts';
 import { oneTimeLinks } from '../../db/schema/people.ts';
-import { Problem } from '../../http/problem.ts';
 
 type Purpose = typeof oneTimeLinks.$inferSelect.purpose;
 

@@ -13,11 +13,11 @@ import {
 import { loadActor, type SignedInActor } from '../../db/actor.ts';
 import type { Database } from '../../db/database.ts';
 import { linkLifetimes, makeLink } from '../../db/make-link.ts';
+import { Problem } from '../../db/problem.ts';
 import { people } from '../../db/schema/people.ts';
 import type { Services } from '../../http/handler.ts';
 import { addRoute, parsePart, requireActor } from '../../http/mount.ts';
 import { hashPassword } from '../../http/password.ts';
-import { Problem } from '../../http/problem.ts';
 import { inTransaction, recordChange } from '../../http/run-handler.ts';
 import { normaliseEmail, wrongCredentials } from '../../http/session.ts';
 import { endSessionsOf } from '../../http/session-store.ts';

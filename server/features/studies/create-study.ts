@@ -1,8 +1,8 @@
 import { createStudy } from '../../../shared/api/studies.ts';
 import { canCreateStudy } from '../../../shared/domain/study-policy.ts';
+import { requireAllowed } from '../../db/problem.ts';
 import { memberships, studies } from '../../db/schema/studies.ts';
 import { defineCommand } from '../../http/handler.ts';
-import { requireAllowed } from '../../http/problem.ts';
 
 /** A new study, empty; whoever creates it is its first scale-up engineer. */
 export const createStudyCommand = defineCommand(createStudy, async ({ actor, body, tx, services }) => {

@@ -2,6 +2,7 @@ import { editChain } from '../../../shared/api/studies.ts';
 import { canEdit } from '../../../shared/domain/study-policy.ts';
 import { editItems } from '../../db/edit-items.ts';
 import { requireAsMeasured } from '../../db/measured-tests.ts';
+import { requireAllowed } from '../../db/problem.ts';
 import {
   describeRouteStates,
   lockStudy,
@@ -10,7 +11,6 @@ import {
   requireReadable,
 } from '../../db/study-reads.ts';
 import { defineCommand } from '../../http/handler.ts';
-import { requireAllowed } from '../../http/problem.ts';
 
 export const editChainCommand = defineCommand(editChain, async ({ actor, params, body, tx, services }) => {
   requireReadable(actor, params.studyId);

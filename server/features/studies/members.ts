@@ -2,11 +2,11 @@ import { and, eq } from 'drizzle-orm';
 import { addMember, removeMember } from '../../../shared/api/studies.ts';
 import { roleNames } from '../../../shared/domain/ability.ts';
 import { canManageMembers } from '../../../shared/domain/study-policy.ts';
+import { Problem, requireAllowed } from '../../db/problem.ts';
 import { people } from '../../db/schema/people.ts';
 import { memberships } from '../../db/schema/studies.ts';
 import { lockStudy, raiseRevision, readMembers, requireReadable } from '../../db/study-reads.ts';
 import { defineCommand } from '../../http/handler.ts';
-import { Problem, requireAllowed } from '../../http/problem.ts';
 
 export const addMemberCommand = defineCommand(addMember, async ({ actor, params, body, tx, services }) => {
   requireReadable(actor, params.studyId);

@@ -1,9 +1,9 @@
 import { saveLayout } from '../../../shared/api/studies.ts';
 import { canEdit } from '../../../shared/domain/study-policy.ts';
+import { requireAllowed } from '../../db/problem.ts';
 import { layouts } from '../../db/schema/studies.ts';
 import { readStudyRow, requireReadable } from '../../db/study-reads.ts';
 import { defineUnrecorded } from '../../http/handler.ts';
-import { requireAllowed } from '../../http/problem.ts';
 
 export const saveLayoutHandler = defineUnrecorded(
   saveLayout,

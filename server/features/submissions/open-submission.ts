@@ -8,6 +8,7 @@ import type { StudyEvaluation } from '../../../shared/engine/model/evaluation.ts
 import type { StudyModel } from '../../../shared/engine/model/study-model.ts';
 import { canonicalJson, sha256 } from '../../db/canonical-json.ts';
 import { editorsOf } from '../../db/edit-items.ts';
+import { Problem, requireAllowed } from '../../db/problem.ts';
 import { routeStates } from '../../db/schema/studies.ts';
 import { submissionAuthors, submissionRoutes, submissions } from '../../db/schema/submissions.ts';
 import {
@@ -22,7 +23,6 @@ import {
 } from '../../db/study-reads.ts';
 import { describeSubmission } from '../../db/submission-reads.ts';
 import { defineCommand } from '../../http/handler.ts';
-import { Problem, requireAllowed } from '../../http/problem.ts';
 
 type Reason = { readonly sentence: string; readonly subject: { readonly kind: string; readonly id: string } };
 

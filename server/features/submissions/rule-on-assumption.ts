@@ -1,10 +1,10 @@
 import { and, eq } from 'drizzle-orm';
 import { ruleOnAssumption } from '../../../shared/api/submissions.ts';
 import { canRule } from '../../../shared/domain/submission-policy.ts';
+import { Problem, requireAllowed } from '../../db/problem.ts';
 import { rulings } from '../../db/schema/submissions.ts';
 import { describeSubmission, factsOf, lockSubmission } from '../../db/submission-reads.ts';
 import { defineCommand } from '../../http/handler.ts';
-import { Problem, requireAllowed } from '../../http/problem.ts';
 
 export const ruleOnAssumptionCommand = defineCommand(
   ruleOnAssumption,

@@ -1,13 +1,13 @@
 import { eq } from 'drizzle-orm';
 import { signSubmission } from '../../../shared/api/submissions.ts';
 import { canSign } from '../../../shared/domain/submission-policy.ts';
+import { Problem, requireAllowed } from '../../db/problem.ts';
 import { people } from '../../db/schema/people.ts';
 import { signatures } from '../../db/schema/submissions.ts';
 import { basisHash } from '../../db/study-reads.ts';
 import { describeSubmission, factsOf, lockSubmission } from '../../db/submission-reads.ts';
 import { defineCommand } from '../../http/handler.ts';
 import { passwordMatches } from '../../http/password.ts';
-import { Problem, requireAllowed } from '../../http/problem.ts';
 import { createThrottle } from '../../http/throttle.ts';
 import { closeSubmission, othersToTell } from './close-submission.ts';
 

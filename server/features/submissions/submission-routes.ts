@@ -1,9 +1,9 @@
 import { getSubmission, returnSubmission, withdrawSubmission } from '../../../shared/api/submissions.ts';
 import { canReturn, canWithdraw } from '../../../shared/domain/submission-policy.ts';
+import { requireAllowed } from '../../db/problem.ts';
 import { managersOf } from '../../db/study-reads.ts';
 import { describeSubmission, factsOf, lockSubmission, readSubmission } from '../../db/submission-reads.ts';
 import { defineCommand, defineQuery, type Handler } from '../../http/handler.ts';
-import { requireAllowed } from '../../http/problem.ts';
 import { closeSubmission, othersToTell } from './close-submission.ts';
 import { openSubmissionCommand } from './open-submission.ts';
 import { ruleOnAssumptionCommand } from './rule-on-assumption.ts';

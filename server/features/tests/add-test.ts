@@ -5,10 +5,10 @@ import { summariseReadings } from '../../../shared/engine/reductions/steady-heat
 import { flowOf, readReadings } from '../../../shared/readings/read-readings.ts';
 import { sha256 } from '../../db/canonical-json.ts';
 import { editItems } from '../../db/edit-items.ts';
+import { Problem, requireAllowed } from '../../db/problem.ts';
 import { files, testReadings } from '../../db/schema/files.ts';
 import { lockStudy, raiseRevision, requireReadable } from '../../db/study-reads.ts';
 import { defineCommand } from '../../http/handler.ts';
-import { Problem, requireAllowed } from '../../http/problem.ts';
 
 /** UTF-8, or Latin-1 as older loggers write it (the degree sign is the usual giveaway). */
 function decode(content: Buffer): string {

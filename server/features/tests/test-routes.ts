@@ -1,9 +1,9 @@
 import { and, eq } from 'drizzle-orm';
 import { getReadings } from '../../../shared/api/tests.ts';
+import { Problem } from '../../db/problem.ts';
 import { testReadings } from '../../db/schema/files.ts';
 import { requireReadable } from '../../db/study-reads.ts';
 import { defineQuery, type Handler } from '../../http/handler.ts';
-import { Problem } from '../../http/problem.ts';
 import { addTestCommand } from './add-test.ts';
 
 const getReadingsQuery = defineQuery(getReadings, async ({ actor, params, reader }) => {

@@ -237,6 +237,18 @@ describe('an approved route', () => {
 });
 
 describe('simultaneous edits', () => {
+  it('take their turn at the study before they look at what is in it', async () => {
+    const { studyId, chain } = await studyWithChain(team);
+    const release = await holdStudy(app.fresh.admin, studyId);
+
+    // Stale in any case: without the turn it would be refused at once.
+    const stale = send(team.engineer, studyId, [edit('quantity', chain.source, 7)]);
+    await waitForLockWaits(app.fresh.admin, 1);
+    await release();
+
+    expect((await stale).status).toBe(409);
+  });
+
   it('of different items are both kept', async () => {
     const { studyId, chain } = await studyWithChain(team);
     const release = await holdStudy(app.fresh.admin, studyId);

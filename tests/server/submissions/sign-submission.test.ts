@@ -222,6 +222,18 @@ describe('a signature is refused', () => {
 });
 
 describe('two verdicts at once', () => {
+  it('take their turn at the study before they look at what is ruled', async () => {
+    const { studyId, submission } = await studyInReview(team);
+    const release = await holdStudy(app.fresh.admin, studyId);
+
+    // Not to be signed in any case: without the turn it would be refused at once.
+    const unruled = sign(team.manager, submission);
+    await waitForLockWaits(app.fresh.admin, 1);
+    await release();
+
+    expect((await unruled).status).toBe(403);
+  });
+
   it('are one signature, one log entry and one mail', async () => {
     const { studyId, submission } = await readyToSign();
     const other = await managerBeside(studyId);

@@ -119,11 +119,16 @@ it('ends the sessions of a deactivated person at once and lets them in no more',
   const bo = await person(app.db);
   const caller = await app.as(bo);
 
-  await administrator.call(changePerson, { params: { personId: bo.id }, body: { ...asIs(bo), isActive: false } });
+  const setActive = (isActive: boolean) =>
+    administrator.call(changePerson, { params: { personId: bo.id }, body: { ...asIs(bo), isActive } });
+  await setActive(false);
 
   expect((await caller.call(listPeople)).status).toBe(401);
   expect((await caller.call(getSession)).body.actor).toBeNull();
   expect((await app.anonymous.call(signIn, { body: { email: bo.email, password: testPassword } })).status).toBe(401);
+  // Ended, not asleep: the account coming back does not bring the session back.
+  await setActive(true);
+  expect((await caller.call(listPeople)).status).toBe(401);
 });
 
 it('acts on a change of role with the next call of an open session', async () => {

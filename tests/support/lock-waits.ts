@@ -1,15 +1,21 @@
 import type { Pool, RowDataPacket } from 'mysql2/promise';
+import { onTestFinished } from 'vitest';
 import { waitUntil } from '../../server/scripts/wait-until.ts';
 
-/** Locks the row of a study as a command would, until the answered function is called. */
+/** Locks the row of a study as a command would, until the answered function is called or the test ends. */
 export async function holdStudy(admin: Pool, studyId: string): Promise<() => Promise<void>> {
   const connection = await admin.getConnection();
   await connection.beginTransaction();
   await connection.query('SELECT id FROM studies WHERE id = ? FOR UPDATE', [studyId]);
-  return async () => {
+  let isHeld = true;
+  const release = async () => {
+    if (!isHeld) return;
+    isHeld = false;
     await connection.rollback();
     connection.release();
   };
+  onTestFinished(release);
+  return release;
 }
 
 /** Waits until as many transactions of this database stand in a queue for a lock. */

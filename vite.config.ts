@@ -15,6 +15,7 @@ export default defineConfig({
   },
   test: {
     // One database server and one browser on two cores: the time-outs are for a machine that is busy.
+    maxWorkers: 2,
     testTimeout: 20_000,
     hookTimeout: 60_000,
     projects: [
@@ -25,6 +26,8 @@ export default defineConfig({
           environment: 'node',
           include: ['tests/**/*.test.ts'],
           exclude: ['tests/e2e/**'],
+          // Loading mathjs afresh for each file took most of the time. No test replaces a module.
+          isolate: false,
           globalSetup: ['tests/support/database-setup.ts'],
         },
       },

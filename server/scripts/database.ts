@@ -87,6 +87,13 @@ function socketPathFor(folder: string): string {
   return join(short, 'db.sock');
 }
 
+/** Its own, since every MariaDB clears the temporary tables of all others out of a folder that they share. */
+function temporaryFolder(folder: string): NodeJS.ProcessEnv {
+  const own = join(folder, 'tmp');
+  mkdirSync(own, { recursive: true });
+  return inheritedEnvironment({ TMPDIR: own });
+}
+
 function initialise(folder: string, say: (line: string) => void): void {
   const data = join(folder, 'data');
   if (existsSync(data)) return;
@@ -104,7 +111,7 @@ function initialise(folder: string, say: (line: string) => void): void {
       '--skip-test-db',
       '--skip-name-resolve',
     ],
-    { encoding: 'utf8' },
+    { encoding: 'utf8', env: temporaryFolder(folder) },
   );
   if (result.status !== 0) {
     throw new Error(`The database folder could not be made:\n${result.stdout ?? ''}${result.stderr ?? ''}`);
@@ -175,6 +182,7 @@ export async function startDatabaseServer({ dataFolder, port, say = () => {} }: 
       '--skip-name-resolve',
       ...safetySettings,
     ],
+    env: temporaryFolder(folder),
     patienceMs: 60_000,
   });
   try {

@@ -54,7 +54,7 @@ function toProblem(error: unknown, log: Logger): Problem {
     log.error({ err: error }, 'the database does not answer');
     return new Problem(
       'unavailable',
-      'The database does not answer, so nothing can be read or saved just now. What you typed is still on the screen; try again in a moment.',
+      'The database does not answer just now. What you typed is still on the screen. Try again in a moment; if you were saving, look first whether it was saved.',
     );
   }
   if (isContention(error)) {

@@ -11,9 +11,6 @@ export type Throttle = {
    */
   readonly take: (...keys: string[]) => Promise<void>;
   readonly giveBack: (...keys: string[]) => Promise<void>;
-  /** @throws Problem `too many` while any of the keys has used up its tries. */
-  readonly requireLeft: (...keys: string[]) => Promise<void>;
-  readonly countFailure: (...keys: string[]) => Promise<void>;
   readonly forgive: (...keys: string[]) => Promise<void>;
 };
 
@@ -44,16 +41,6 @@ export function createThrottle(options: {
     },
     giveBack: async (...keys) => {
       for (const key of keys) await limiter.reward(key);
-    },
-    requireLeft: async (...keys) => {
-      for (const key of keys) {
-        const state = await limiter.get(key);
-        if (state instanceof RateLimiterRes && state.remainingPoints <= 0) throw tooMany(state);
-      }
-    },
-    countFailure: async (...keys) => {
-      // A rejection only says that the tries are used up, which `requireLeft` reports next time.
-      for (const key of keys) await limiter.consume(key).catch(() => undefined);
     },
     forgive: async (...keys) => {
       for (const key of keys) await limiter.delete(key);

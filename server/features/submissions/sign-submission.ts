@@ -29,13 +29,12 @@ export const signSubmissionCommand = defineCommand(signSubmission, async ({ acto
   }
 
   const key = `signing ${actor.personId}`;
-  await throttle.requireLeft(key);
+  await throttle.take(key);
   const [person] = await tx
     .select({ passwordHash: people.passwordHash })
     .from(people)
     .where(eq(people.id, actor.personId));
   if (!(await passwordMatches(person?.passwordHash ?? null, body.password))) {
-    await throttle.countFailure(key);
     const sentence = 'This is not your password, so nothing was signed.';
     throw new Problem('not allowed', sentence, { fields: { 'body.password': sentence } });
   }

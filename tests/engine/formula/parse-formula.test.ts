@@ -18,7 +18,8 @@ function refusalOf(text: string): string {
 function numericSlope(formula: Formula, at: readonly number[], index: number): number {
   const valueAt = (shift: number) => formula.evaluate(at.map((x, i) => (i === index ? x + shift : x))).value;
   const central = (step: number) => (valueAt(step) - valueAt(-step)) / (2 * step);
-  const step = 1e-3 * Math.max(Math.abs(at[index] ?? 0), 1e-3);
+  // In proportion to the argument: a roughness of 2e-6 must not become negative.
+  const step = 1e-3 * (Math.abs(at[index] ?? 0) || 1e-3);
   return (4 * central(step / 2) - central(step)) / 3;
 }
 

@@ -107,8 +107,20 @@ function SignOut() {
     },
   });
   return (
-    <button type="button" className="min-h-8 underline" disabled={leave.isPending} onClick={() => leave.mutate()}>
-      Sign out
-    </button>
+    <>
+      {leave.error && (
+        <span role="alert" className="text-xs font-semibold text-bad">
+          You are still signed in. {leave.error.message}
+        </span>
+      )}
+      <button
+        type="button"
+        className="min-h-8 whitespace-nowrap underline"
+        disabled={leave.isPending}
+        onClick={() => leave.mutate()}
+      >
+        Sign out
+      </button>
+    </>
   );
 }

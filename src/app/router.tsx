@@ -1,10 +1,10 @@
-import { createBrowserRouter } from 'react-router-dom';
+import { createBrowserRouter, type RouteObject } from 'react-router-dom';
 import { Loading } from '../ui/Loading.tsx';
 import { AppLayout } from './AppLayout.tsx';
 import { ErrorPage, NotFoundPage } from './ErrorPage.tsx';
 
 /** Every page. Each is a chunk of its own, so that signing in loads neither the canvas nor the engine. */
-export const router = createBrowserRouter([
+export const routes: RouteObject[] = [
   {
     errorElement: <ErrorPage />,
     hydrateFallbackElement: <Loading what="Stemma" />,
@@ -30,4 +30,6 @@ export const router = createBrowserRouter([
       },
     ],
   },
-]);
+];
+
+export const router = createBrowserRouter(routes);

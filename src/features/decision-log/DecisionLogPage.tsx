@@ -6,6 +6,7 @@ import { canVerify } from '../../../shared/domain/study-policy.ts';
 import { call } from '../../api/call.ts';
 import { useAsking } from '../../api/use-asking.ts';
 import { ActionButton } from '../../ui/ActionButton.tsx';
+import { BeforeAfter } from '../../ui/BeforeAfter.tsx';
 import { Button } from '../../ui/Button.tsx';
 import { Field } from '../../ui/Field.tsx';
 import { Loading } from '../../ui/Loading.tsx';
@@ -119,38 +120,7 @@ function Entry({ entry }: { readonly entry: LogEntry }) {
         {items.length > 0 && (
           <details open={isOpen} onToggle={(event) => setOpen(event.currentTarget.open)}>
             <summary className="min-h-7 cursor-pointer text-sm text-primary underline">Before and after</summary>
-            {isOpen &&
-              items.map((item) => (
-                <div key={item.title} className="my-2 relative overflow-x-auto">
-                  <table className="w-full border border-line text-sm">
-                    <caption className="py-1 text-left font-semibold">{item.title}</caption>
-                    <thead>
-                      <tr className="border-b border-line text-left">
-                        <th scope="col" className="px-2 py-1">
-                          Field
-                        </th>
-                        <th scope="col" className="px-2 py-1">
-                          Before
-                        </th>
-                        <th scope="col" className="px-2 py-1">
-                          After
-                        </th>
-                      </tr>
-                    </thead>
-                    <tbody>
-                      {item.fields.map((field) => (
-                        <tr key={field.field} className="border-b border-hair align-top">
-                          <th scope="row" className="px-2 py-1 text-left font-normal">
-                            {field.field}
-                          </th>
-                          <td className="px-2 py-1 break-all text-ink-2">{field.before}</td>
-                          <td className="px-2 py-1 break-all">{field.after}</td>
-                        </tr>
-                      ))}
-                    </tbody>
-                  </table>
-                </div>
-              ))}
+            {isOpen && items.map((item) => <BeforeAfter key={item.title} item={item} />)}
           </details>
         )}
       </div>

@@ -10,9 +10,12 @@ import { FormProblem } from '../../ui/FormProblem.tsx';
 import { useFormProblem } from '../../ui/use-form-problem.ts';
 import { SessionFrame } from './SessionFrame.tsx';
 
-/** Only a path of this app may be returned to: `//elsewhere` would lead away. */
+/** Only a path of this app may be returned to. Resolved first: browsers read `//elsewhere` and `/\elsewhere` as a host. */
 function safeReturn(to: string | null): string {
-  return to && /^\/(?!\/)/.test(to) ? to : paths.home();
+  const here = window.location.origin;
+  if (!to?.startsWith('/') || !URL.canParse(to, here)) return paths.home();
+  const { origin, pathname, search } = new URL(to, here);
+  return origin === here && !pathname.startsWith('//') ? pathname + search : paths.home();
 }
 
 export function Component() {

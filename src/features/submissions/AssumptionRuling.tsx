@@ -150,7 +150,7 @@ function RulingForm({
           </Field>
         </div>
       )}
-      {word && (word !== 'accepted' || comment !== '' || given) && (
+      {word && (word !== 'accepted' || comment !== '' || given || rule.error) && (
         <div className="flex flex-wrap items-end gap-3">
           <div className="min-w-0 flex-1">
             <Field label={word === 'refused' ? 'Reason' : 'Comment'}>

@@ -1,10 +1,12 @@
 import type { Submission } from '../../../shared/api/submissions.ts';
+import { BeforeAfter } from '../../ui/BeforeAfter.tsx';
 import { Measured } from '../../ui/Measured.tsx';
 import { Symbol_ } from '../../ui/Symbol.tsx';
+import { changedItems, changedNumbers } from './changed-since-signed.ts';
 
 const percent = new Intl.NumberFormat('en-GB', { maximumFractionDigits: 1, signDisplay: 'exceptZero' });
 
-/** Every number of the package against what was signed last: was, now, and the change in per cent. */
+/** The package against what was signed last: each number that moved, then each entry behind them that changed. */
 export function ChangesSinceSigned({ submission }: { readonly submission: Submission }) {
   const { snapshot, signedBefore } = submission;
   if (!signedBefore) {
@@ -15,18 +17,16 @@ export function ChangesSinceSigned({ submission }: { readonly submission: Submis
       </section>
     );
   }
-  const rows = snapshot.model.quantities.flatMap((quantity) => {
-    const now = snapshot.evaluation.quantities[quantity.id]?.result ?? null;
-    const was = signedBefore.evaluation.quantities[quantity.id]?.result ?? null;
-    const isSame = now && was && Math.abs(now.value - was.value) <= 1e-12 * Math.abs(was.value) && now.u === was.u;
-    return isSame ? [] : [{ quantity, now, was }];
-  });
+  const rows = changedNumbers(signedBefore, snapshot);
+  const items = changedItems(signedBefore.model, snapshot.model);
   return (
     <section aria-label="What changed" className="grid grid-cols-[minmax(0,1fr)] gap-2">
       <h2 className="flex justify-between border-b border-rule pb-1 text-lg font-bold">
         What changed{' '}
         <span className="text-sm font-normal text-ink-2">
-          {rows.length} of {snapshot.model.quantities.length} numbers, the others hidden
+          {rows.length === 0
+            ? 'no number differs'
+            : `${rows.length} of ${snapshot.model.quantities.length} numbers, the others hidden`}
         </span>
       </h2>
       {rows.length > 0 && (
@@ -69,6 +69,18 @@ export function ChangesSinceSigned({ submission }: { readonly submission: Submis
             </tbody>
           </table>
         </div>
+      )}
+      {items.length > 0 ? (
+        <details open={rows.length === 0}>
+          <summary className="min-h-7 cursor-pointer text-sm text-primary underline">
+            {items.length === 1 ? '1 entry' : `${items.length} entries`} changed, field by field
+          </summary>
+          {items.map((item) => (
+            <BeforeAfter key={item.title} item={item} />
+          ))}
+        </details>
+      ) : (
+        <p className="text-ink-2">Every entry is as it was signed.</p>
       )}
     </section>
   );

@@ -22,6 +22,8 @@ function useChange<E extends Endpoint>(submissionId: string, run: (body: Input<E
   const queryClient = useQueryClient();
   return useMutation({
     mutationFn: run,
+    // One after the other: each reply is the whole submission, and an older one must not replace a newer.
+    scope: { id: `submission ${submissionId}` },
     onSuccess: (submission) => {
       queryClient.setQueryData(submissionQuery(submissionId).queryKey, submission);
       return queryClient.invalidateQueries({ queryKey: ['work-list'] });

@@ -1,11 +1,14 @@
 import { QueryClient, QueryClientProvider } from '@tanstack/react-query';
-import { render } from '@testing-library/react';
+import { configure, render } from '@testing-library/react';
 import { createMemoryRouter, RouterProvider } from 'react-router-dom';
 import { vi } from 'vitest';
 import type { ProblemBody } from '../../shared/api/problem.ts';
 import { problemStatus } from '../../shared/api/problem.ts';
 import type { SessionActor } from '../../src/api/session.ts';
 import { routes } from '../../src/app/router.tsx';
+
+// The first page of a file loads its chunk, the engine among them: on a busy machine more than the usual second.
+configure({ asyncUtilTimeout: 10_000 });
 
 export type Asked = { readonly method: string; readonly path: string; readonly body: unknown };
 export type Answer = (asked: Asked) => unknown;

@@ -1,6 +1,6 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
-import { useEffect, useState } from 'react';
-import { Navigate, NavLink, Outlet, useLocation, useNavigate } from 'react-router-dom';
+import { useEffect, useRef, useState } from 'react';
+import { Navigate, NavLink, Outlet, useLocation, useNavigate, useNavigationType } from 'react-router-dom';
 import { signOut } from '../../shared/api/session.ts';
 import { call, onSignedOut } from '../api/call.ts';
 import { paths } from '../api/paths.ts';
@@ -37,9 +37,7 @@ export function AppLayout() {
 function Shell({ actor }: { readonly actor: SessionActor }) {
   const [isOpen, setOpen] = useState(false);
   const location = useLocation();
-  // Choosing a page closes the folded menu.
-  // biome-ignore lint/correctness/useExhaustiveDependencies: it is the address that matters.
-  useEffect(() => setOpen(false), [location.pathname]);
+  useFreshPage(location.pathname, () => setOpen(false));
   const pages = [
     { to: paths.home(), words: 'Work list' },
     { to: paths.studies(), words: 'Studies' },
@@ -94,6 +92,23 @@ function Shell({ actor }: { readonly actor: SessionActor }) {
       </main>
     </div>
   );
+}
+
+/**
+ * A page that a link led to starts at its top, with the focus in it: a browser would do so, a router does not. Going
+ * back is left to the browser, which knows where the page was.
+ */
+function useFreshPage(pathname: string, onArrival: () => void): void {
+  const move = useNavigationType();
+  const shown = useRef(pathname);
+  useEffect(() => {
+    if (shown.current === pathname) return;
+    shown.current = pathname;
+    onArrival();
+    if (move === 'POP') return;
+    window.scrollTo(0, 0);
+    document.getElementById('main')?.focus({ preventScroll: true });
+  }, [pathname, move, onArrival]);
 }
 
 function SignOut() {

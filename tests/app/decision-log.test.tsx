@@ -2,6 +2,7 @@ import { cleanup, screen, within } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
 import { afterEach, describe, expect, it, vi } from 'vitest';
 import type { LogEntry } from '../../shared/api/decision-log.ts';
+import type { StudySummary } from '../../shared/api/studies.ts';
 import { type AuditEvent, auditEventSchema } from '../../shared/domain/audit-events.ts';
 import { entrySentence, studyEventNames } from '../../src/features/decision-log/entry-sentence.ts';
 import { answerFetch, openApp, personWith, refuse, sessionOf } from './open-app.tsx';
@@ -14,6 +15,17 @@ afterEach(() => {
 const studyId = '40000000-0000-4000-8000-000000000001';
 const auditor = personWith({ name: 'Lena Frey', memberships: { [studyId]: 'auditor' } });
 const log = `/studies/${studyId}/log`;
+const summary: StudySummary = {
+  id: studyId,
+  title: 'Wall-coated tube',
+  question: '',
+  myRole: 'auditor',
+  quantityCount: 4,
+  approvedCount: 1,
+  inReviewCount: 0,
+  changedAt: '2026-03-04T09:12:00.000Z',
+};
+const named = { 'GET /api/studies': () => ({ studies: [summary] }) };
 const list = `GET /api/studies/${studyId}/decision-log`;
 const verification = `POST /api/studies/${studyId}/decision-log/verifications`;
 
@@ -145,13 +157,15 @@ describe('the sentence of an entry', () => {
 });
 
 describe('the decision log', () => {
-  it('opens what an entry changed, field by field, and leaves out what stayed', async () => {
+  it('names its study and opens what an entry changed, field by field, and leaves out what stayed', async () => {
     answerFetch({
       'GET /api/session': sessionOf(auditor),
+      ...named,
       [list]: () => ({ entries: [edited, created], total: 2, hasMore: false }),
     });
     openApp(log);
 
+    await screen.findByRole('heading', { name: 'Decision log of Wall-coated tube' });
     const [newest] = await screen.findAllByRole('listitem');
     if (!newest) throw new Error('The log should have entries.');
     expect(newest.textContent).toContain('Ines Roth changed Rig');
@@ -170,6 +184,7 @@ describe('the decision log', () => {
   it('keeps its filters in the address and asks the server with them', async () => {
     const asked = answerFetch({
       'GET /api/session': sessionOf(auditor),
+      ...named,
       [list]: ({ path }) => ({ entries: path.includes('text=nowhere') ? [] : [created], total: 1, hasMore: false }),
     });
     const app = openApp(`${log}?event=chain.edited`);
@@ -185,6 +200,7 @@ describe('the decision log', () => {
   it('goes on with older entries from the last one shown', async () => {
     const asked = answerFetch({
       'GET /api/session': sessionOf(auditor),
+      ...named,
       [list]: ({ path }) =>
         path.includes('before=2')
           ? { entries: [created], total: 2, hasMore: false }
@@ -206,6 +222,7 @@ describe('the decision log', () => {
   ])('says after a verification whether it is whole or where it broke (%o)', async (broken, sentence) => {
     answerFetch({
       'GET /api/session': sessionOf(auditor),
+      ...named,
       [list]: () => ({ entries: [created], total: 1, hasMore: false }),
       [verification]: () => ({
         whole: broken === null,
@@ -228,6 +245,7 @@ describe('the decision log', () => {
   it('says why an engineer may not verify it', async () => {
     answerFetch({
       'GET /api/session': sessionOf(personWith({ memberships: { [studyId]: 'engineer' } })),
+      ...named,
       [list]: () => ({ entries: [created], total: 1, hasMore: false }),
     });
     openApp(log);
@@ -243,6 +261,7 @@ describe('the decision log', () => {
   it('says that a study is closed to who is not a member, instead of an empty log', async () => {
     answerFetch({
       'GET /api/session': sessionOf(personWith()),
+      ...named,
       [list]: () => refuse({ code: 'not found', sentence: 'There is no such study among yours.' }),
     });
     openApp(log);

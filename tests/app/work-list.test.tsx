@@ -70,6 +70,25 @@ describe('the work list', () => {
   });
 });
 
+describe('a link of the app', () => {
+  it('leads to the top of the page, with the focus in it', async () => {
+    const scrolls: unknown[][] = [];
+    vi.stubGlobal('scrollTo', (...place: unknown[]) => scrolls.push(place));
+    answerFetch({
+      'GET /api/session': sessionOf(personWith()),
+      'GET /api/work-list': () => ({ items: [] }),
+      'GET /api/studies': () => ({ studies: [] }),
+    });
+    openApp('/');
+
+    await userEvent.click(await screen.findByRole('link', { name: 'Go to the studies' }));
+    await screen.findByRole('heading', { name: 'Studies' });
+
+    expect(scrolls).toEqual([[0, 0]]);
+    expect(document.activeElement).toBe(screen.getByRole('main'));
+  });
+});
+
 describe('the bar on top', () => {
   it.each([
     [true, ['Work list', 'Studies', 'People']],

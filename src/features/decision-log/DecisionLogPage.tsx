@@ -1,9 +1,10 @@
-import { useInfiniteQuery, useMutation, useQueryClient } from '@tanstack/react-query';
+import { useInfiniteQuery, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
 import { useState } from 'react';
 import { useParams, useSearchParams } from 'react-router-dom';
 import { type LogEntry, listLogEntries, verifyLog } from '../../../shared/api/decision-log.ts';
 import { canVerify } from '../../../shared/domain/study-policy.ts';
 import { call } from '../../api/call.ts';
+import { studiesQuery } from '../../api/studies-query.ts';
 import { useAsking } from '../../api/use-asking.ts';
 import { ActionButton } from '../../ui/ActionButton.tsx';
 import { BeforeAfter } from '../../ui/BeforeAfter.tsx';
@@ -20,6 +21,8 @@ import { entrySentence, studyEventNames } from './entry-sentence.ts';
 /** Everything that happened to a study, newest first, and the proof that nothing was changed since. */
 export function Component() {
   const { studyId = '' } = useParams();
+  const studies = useQuery(studiesQuery);
+  const study = studies.data?.studies.find((one) => one.id === studyId);
   const [search, setSearch] = useSearchParams();
   const event = search.get('event') ?? '';
   const text = search.get('text') ?? '';
@@ -50,7 +53,7 @@ export function Component() {
   const entries = log.data?.pages.flatMap((page) => page.entries) ?? [];
   const total = log.data?.pages[0]?.total ?? 0;
   return (
-    <Page title="Decision log">
+    <Page title={study ? `Decision log of ${study.title}` : 'Decision log'}>
       <StudyHeader studyId={studyId} current="log" />
       <Verification studyId={studyId} />
       <div className="flex flex-wrap items-end gap-3">

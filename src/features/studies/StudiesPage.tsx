@@ -1,12 +1,13 @@
-import { queryOptions, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
+import { useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
 import { useState } from 'react';
 import { Link, useNavigate, useSearchParams } from 'react-router-dom';
-import { createStudy, listStudies, type StudySummary } from '../../../shared/api/studies.ts';
+import { createStudy, type StudySummary } from '../../../shared/api/studies.ts';
 import { roleNames } from '../../../shared/domain/ability.ts';
 import { canCreateStudy } from '../../../shared/domain/study-policy.ts';
 import { call } from '../../api/call.ts';
 import { paths } from '../../api/paths.ts';
 import { sessionQuery } from '../../api/session.ts';
+import { studiesQuery } from '../../api/studies-query.ts';
 import { useAsking } from '../../api/use-asking.ts';
 import { ActionButton } from '../../ui/ActionButton.tsx';
 import { Button } from '../../ui/Button.tsx';
@@ -19,11 +20,6 @@ import { Moment } from '../../ui/Moment.tsx';
 import { Page } from '../../ui/Page.tsx';
 import { ProblemNote } from '../../ui/ProblemNote.tsx';
 import { useFormProblem } from '../../ui/use-form-problem.ts';
-
-const studiesQuery = queryOptions({
-  queryKey: ['studies'],
-  queryFn: ({ signal }) => call(listStudies, {}, signal),
-});
 
 const states = {
   all: 'All',

@@ -1,6 +1,6 @@
 import * as z from 'zod';
 import { idSchema, steadyHeatingSchema, testSchema } from '../engine/model/study-model.ts';
-import { readingsMappingSchema, readingSchema } from '../readings/readings.ts';
+import { readingSchema, readingsMappingSchema } from '../readings/readings.ts';
 import { defineEndpoint } from './endpoint.ts';
 
 export const maxReadingsFileBytes = 5_000_000;

@@ -1,7 +1,7 @@
 import type { ChainChange } from '../../shared/domain/audit-events.ts';
 
 export type ChangedField = { readonly field: string; readonly before: string; readonly after: string };
-export type ChangedItem = { readonly title: string; readonly fields: readonly ChangedField[] };
+export type ChangedItem = { readonly key: string; readonly title: string; readonly fields: readonly ChangedField[] };
 
 const kindNames: Record<ChainChange['kind'], string> = {
   'operating-point': 'Operating point',
@@ -45,13 +45,17 @@ export function changedFields(before: unknown, after: unknown): ChangedField[] {
     .filter((one) => one.before !== one.after);
 }
 
-function titleOf({ kind, before, after }: ChainChange): string {
+function titleOf({ kind, before, after }: ChainChange, owner: string | undefined): string {
   const name = nameOf(after ?? before);
   const what = before === null ? 'added' : after === null ? 'removed' : 'changed';
-  return `${kindNames[kind]}${name ? ` "${name}"` : ''} ${what}`;
+  return `${kindNames[kind]}${name ? ` "${name}"` : ''}${owner ? ` of ${owner}` : ''} ${what}`;
 }
 
-/** One item of a chain before and after, with its name and what was done to it. */
-export function describeChange(change: ChainChange): ChangedItem {
-  return { title: titleOf(change), fields: changedFields(change.before, change.after) };
+/** One item of a chain before and after, with its name, what it belongs to where that is known, and what was done. */
+export function describeChange(change: ChainChange, owner?: string): ChangedItem {
+  return {
+    key: `${change.kind} ${change.id}`,
+    title: titleOf(change, owner),
+    fields: changedFields(change.before, change.after),
+  };
 }

@@ -280,7 +280,7 @@ describe('reviewing a submission', () => {
     open();
 
     expect(await screen.findByText('no number differs')).toBeDefined();
-    const table = screen.getByRole('table', { name: 'Route "Stated value" changed' });
+    const table = screen.getByRole('table', { name: 'Route "Stated value" of Coated area changed' });
     expect(within(table).getAllByRole('row')[1]?.textContent).toBe(
       'evidenceDrawing 12, revision ADrawing 12, revision B',
     );

@@ -36,17 +36,17 @@ it('has a signed and a returned submission, whose numbers a practitioner would b
   const signed = all.find((one) => one.status === 'signed');
 
   expect(all.map((one) => one.status).sort()).toEqual(['returned', 'signed']);
-  const valueOf = (symbol: string) => {
+  const valueIn = (symbol: string) => {
     const quantity = signed?.snapshot.model.quantities.find((one) => one.symbol === symbol);
     return signed?.snapshot.evaluation.quantities[quantity?.id ?? '']?.result?.value ?? Number.NaN;
   };
   // Turbulent water at Re 25 000 in a 20 mm tube: Gnielinski gives 4800 W/(m² K), see tests/reference/methods.
-  expect(valueOf('h_rig')).toBeGreaterThan(4500);
-  expect(valueOf('h_rig')).toBeLessThan(5100);
-  expect(valueOf('k_w')).toBeGreaterThan(1.2e-5);
-  expect(valueOf('k_w')).toBeLessThan(2.2e-5);
-  expect(valueOf('L_c')).toBeGreaterThan(40);
-  expect(valueOf('L_c')).toBeLessThan(90);
+  expect(valueIn('h_rig')).toBeGreaterThan(4500);
+  expect(valueIn('h_rig')).toBeLessThan(5100);
+  expect(valueIn('k_w')).toBeGreaterThan(1.2e-5);
+  expect(valueIn('k_w')).toBeLessThan(2.2e-5);
+  expect(valueIn('L_c')).toBeGreaterThan(40);
+  expect(valueIn('L_c')).toBeLessThan(90);
 });
 
 it('leaves decision logs that verify, and mails that only wait to be sent', async () => {

@@ -123,7 +123,7 @@ function Entry({ entry }: { readonly entry: LogEntry }) {
         {items.length > 0 && (
           <details open={isOpen} onToggle={(event) => setOpen(event.currentTarget.open)}>
             <summary className="min-h-7 cursor-pointer text-sm text-primary underline">Before and after</summary>
-            {isOpen && items.map((item) => <BeforeAfter key={item.title} item={item} />)}
+            {isOpen && items.map((item) => <BeforeAfter key={item.key} item={item} />)}
           </details>
         )}
       </div>

@@ -5,17 +5,18 @@ import { type ChangedItem, changedFields, describeChange } from '../../ui/change
 export function beforeAndAfter(event: AuditEvent): ChangedItem[] {
   switch (event.event) {
     case 'chain.edited':
-      return event.changes.map(describeChange);
+      return event.changes.map((change) => describeChange(change));
     case 'assumption.ruled':
-      return [{ title: 'Ruling', fields: changedFields(event.before, event.after) }];
+      return [{ key: event.event, title: 'Ruling', fields: changedFields(event.before, event.after) }];
     case 'study.renamed':
     case 'person.changed':
-      return [{ title: 'Changed', fields: changedFields(event.before, event.after) }];
+      return [{ key: event.event, title: 'Changed', fields: changedFields(event.before, event.after) }];
     case 'study.created':
-      return [{ title: 'Study', fields: changedFields(null, event.study) }];
+      return [{ key: event.event, title: 'Study', fields: changedFields(null, event.study) }];
     case 'submission.opened':
       return [
         {
+          key: event.event,
           title: 'Submission',
           fields: changedFields(null, { note: event.note, 'snapshot SHA-256': event.snapshotHash }),
         },
@@ -23,6 +24,7 @@ export function beforeAndAfter(event: AuditEvent): ChangedItem[] {
     case 'submission.signed':
       return [
         {
+          key: event.event,
           title: 'Signature',
           fields: changedFields(null, {
             signer: event.signerName,

@@ -30,7 +30,12 @@ export function ChangesSinceSigned({ submission }: { readonly submission: Submis
         </span>
       </h2>
       {rows.length > 0 && (
-        <div className="relative overflow-x-auto">
+        <section
+          aria-label="Numbers that differ"
+          className="relative overflow-x-auto"
+          // biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable by keyboard
+          tabIndex={0}
+        >
           <table className="w-full border border-rule bg-surface text-sm">
             <caption className="sr-only">Numbers that differ from what was signed last</caption>
             <thead>
@@ -68,7 +73,7 @@ export function ChangesSinceSigned({ submission }: { readonly submission: Submis
               ))}
             </tbody>
           </table>
-        </div>
+        </section>
       )}
       {items.length > 0 ? (
         <details open={rows.length === 0}>
@@ -76,7 +81,7 @@ export function ChangesSinceSigned({ submission }: { readonly submission: Submis
             {items.length === 1 ? '1 entry' : `${items.length} entries`} changed, field by field
           </summary>
           {items.map((item) => (
-            <BeforeAfter key={item.title} item={item} />
+            <BeforeAfter key={item.key} item={item} />
           ))}
         </details>
       ) : (

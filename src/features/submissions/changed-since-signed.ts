@@ -38,17 +38,19 @@ const itemsOf: Record<ChainItemKind, (model: StudyModel) => readonly { readonly 
 
 /** Every item of the chain that differs, field by field, also where no number moved: a justification, a source. */
 export function changedItems(signed: StudyModel, now: StudyModel): ChangedItem[] {
+  const quantityNames = new Map([...signed.quantities, ...now.quantities].map(({ id, name }) => [id, name]));
+  const routeOwners = new Map(
+    [...signed.routes, ...now.routes].map(({ id, quantityId }) => [id, quantityNames.get(quantityId)]),
+  );
   return Object.entries(itemsOf).flatMap(([kind, select]) => {
     const [before, after] = [signed, now].map((model) => new Map(select(model).map((item) => [item.id, item])));
     const ids = new Set([...(before?.keys() ?? []), ...(after?.keys() ?? [])]);
     return [...ids]
       .map((id) =>
-        describeChange({
-          kind: kind as ChainItemKind,
-          id,
-          before: before?.get(id) ?? null,
-          after: after?.get(id) ?? null,
-        }),
+        describeChange(
+          { kind: kind as ChainItemKind, id, before: before?.get(id) ?? null, after: after?.get(id) ?? null },
+          routeOwners.get(id),
+        ),
       )
       .filter((item) => item.fields.length > 0);
   });

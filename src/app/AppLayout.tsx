@@ -1,6 +1,14 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
-import { useEffect, useRef, useState } from 'react';
-import { Navigate, NavLink, Outlet, useLocation, useNavigate, useNavigationType } from 'react-router-dom';
+import { useEffect, useLayoutEffect, useRef, useState } from 'react';
+import {
+  Navigate,
+  NavLink,
+  Outlet,
+  ScrollRestoration,
+  useLocation,
+  useNavigate,
+  useNavigationType,
+} from 'react-router-dom';
 import { signOut } from '../../shared/api/session.ts';
 import { call, onSignedOut } from '../api/call.ts';
 import { paths } from '../api/paths.ts';
@@ -89,19 +97,23 @@ function Shell({ actor }: { readonly actor: SessionActor }) {
       </header>
       <main id="main" tabIndex={-1} className="min-w-0 outline-none">
         <Outlet />
+        <ScrollRestoration getKey={scrollKey} />
       </main>
     </div>
   );
 }
 
+/** Where a page was scrolled to is kept by its path: narrowing a list by its address moves nothing. */
+const scrollKey = (location: { readonly pathname: string }) => location.pathname;
+
 /**
  * A page that a link led to starts at its top, with the focus in it: a browser would do so, a router does not. Going
- * back is left to the browser, which knows where the page was.
+ * back is left to the router's `ScrollRestoration`, which knows where the page was.
  */
 function useFreshPage(pathname: string, onArrival: () => void): void {
   const move = useNavigationType();
   const shown = useRef(pathname);
-  useEffect(() => {
+  useLayoutEffect(() => {
     if (shown.current === pathname) return;
     shown.current = pathname;
     onArrival();

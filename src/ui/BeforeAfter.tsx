@@ -21,7 +21,7 @@ export function BeforeAfter({ item }: { readonly item: ChangedItem }) {
       <tbody>
         {item.fields.map((field) => (
           <tr key={field.field} className="border-b border-hair align-top">
-            <th scope="row" className="px-2 py-1 text-left font-normal wrap-anywhere">
+            <th scope="row" className="px-2 py-1 text-left font-normal">
               {field.field}
             </th>
             <td className="px-2 py-1 wrap-anywhere text-ink-2">{field.before}</td>

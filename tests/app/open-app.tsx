@@ -50,6 +50,11 @@ export function answerFetch(answers: Readonly<Record<string, Answer>>): Asked[] 
 
 /** The whole client at an address, with the pages and the router of the product and a cache of its own. */
 export function openApp(address: string) {
+  let place: unknown[] = [];
+  // jsdom lays nothing out and therefore scrolls nowhere.
+  vi.stubGlobal('scrollTo', (...to: unknown[]) => {
+    place = to;
+  });
   const router = createMemoryRouter(routes, { initialEntries: [address] });
   const client = new QueryClient({ defaultOptions: { queries: { retry: false } } });
   render(
@@ -60,6 +65,8 @@ export function openApp(address: string) {
   return {
     /** Where the person is now. */
     address: () => router.state.location.pathname + router.state.location.search,
+    /** Where the window was last told to scroll to. */
+    scrolledTo: () => place,
   };
 }
 

@@ -72,19 +72,17 @@ describe('the work list', () => {
 
 describe('a link of the app', () => {
   it('leads to the top of the page, with the focus in it', async () => {
-    const scrolls: unknown[][] = [];
-    vi.stubGlobal('scrollTo', (...place: unknown[]) => scrolls.push(place));
     answerFetch({
       'GET /api/session': sessionOf(personWith()),
       'GET /api/work-list': () => ({ items: [] }),
       'GET /api/studies': () => ({ studies: [] }),
     });
-    openApp('/');
+    const app = openApp('/');
 
     await userEvent.click(await screen.findByRole('link', { name: 'Go to the studies' }));
     await screen.findByRole('heading', { name: 'Studies' });
 
-    expect(scrolls).toEqual([[0, 0]]);
+    expect(app.scrolledTo()).toEqual([0, 0]);
     expect(document.activeElement).toBe(screen.getByRole('main'));
   });
 });

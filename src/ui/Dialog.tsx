@@ -17,7 +17,13 @@ export function Dialog({
   useEffect(() => {
     const element = dialog.current;
     if (!element) return;
-    if (open && !element.open) element.showModal();
+    if (open && !element.open) {
+      element.showModal();
+      // Typing goes into the form: the browser alone would start at Close.
+      element
+        .querySelector<HTMLElement>('input:not(:disabled), select:not(:disabled), textarea:not(:disabled)')
+        ?.focus();
+    }
     if (!open && element.open) element.close();
   }, [open]);
   return (

@@ -158,7 +158,7 @@ export function AddQuantity({ scale }: { readonly scale: Scale | null }) {
           label="Unit shown"
           mono
           value={unit}
-          hint="m/s, h, 1 for none"
+          hint="e.g. mm/s; 1 for none"
           onChange={(text) => {
             setUnit(text);
             const read = parseUnit(text);

@@ -159,7 +159,7 @@ function Entries({
   const { state, document, held } = useChain();
   const [adding, setAdding] = useState<readonly PointVariableKey[]>([]);
   const keys = pointVariableKeys.filter(
-    (key) => point.entries.some((entry) => entry.key === key) || adding.includes(key),
+    (key) => point.entries.some((entry) => entry.key === key) || adding.includes(key) || held.has(`${point.id}:${key}`),
   );
   const missing = pointVariableKeys.filter((key) => !keys.includes(key));
 

@@ -29,18 +29,19 @@ export function TextField({
 }) {
   const id = useId();
   const [text, setText] = useState(value);
-  const [refusal, setRefusal] = useState<string | null>(null);
+  const [refused, setRefused] = useState<{ readonly text: string; readonly sentence: string } | null>(null);
+  // A refusal stands as long as the text it speaks of.
+  const refusal = refused?.text === text ? refused.sentence : null;
 
   // Set from outside (undo, somebody else's save); a space at the end of what is being typed is no difference.
   useEffect(() => {
     setText((typed) => (typed.trim() === value ? typed : value));
-    setRefusal(null);
   }, [value]);
 
   function handle(next: string): void {
     setText(next);
     const outcome = onChange(next.trim());
-    setRefusal(outcome.ok ? null : outcome.sentence);
+    setRefused(outcome.ok ? null : { text: next, sentence: outcome.sentence });
   }
 
   const shared = {

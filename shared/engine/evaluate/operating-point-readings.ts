@@ -124,7 +124,8 @@ export class OperatingPointReadings {
     if (lacking.length === 0)
       return `${symbolOf(key)} of “${point.name}” has no finite value: check what is entered there.`;
     if (lacking.length === 1 && lacking[0] === key) return `${symbolOf(key)} is not entered at “${point.name}”.`;
-    return `${symbolOf(key)} of “${point.name}” is not known: enter it, or ${listed(lacking.map(withAlternative))}.`;
+    const itself = findPointVariable(key) ? 'it, or ' : '';
+    return `${symbolOf(key)} of “${point.name}” is not known: enter ${itself}${listed(lacking.map(withAlternative))}.`;
   }
 
   /** The entries that the shortest derivation still needs. */

@@ -45,15 +45,20 @@ function escapeText(text: string): string {
   return text.replace(/&/g, '&amp;').replace(/</g, '&lt;').replace(/>/g, '&gt;');
 }
 
+/** Only names of its own: "constructor" is in every object. */
+function inGreek(name: string): string {
+  return Object.hasOwn(greek, name) ? (greek[name] ?? name) : name;
+}
+
 function identifier(name: string): string {
-  const shown = escapeText(greek[name] ?? name);
+  const shown = escapeText(inGreek(name));
   return upright.has(name) ? `<mi mathvariant="normal">${shown}</mi>` : `<mi>${shown}</mi>`;
 }
 
 function symbol(name: string): string {
   const [head = '', ...tail] = name.split('_');
   if (tail.length === 0) return identifier(head);
-  return `<msub>${identifier(head)}<mrow>${tail.map((part) => `<mi mathvariant="normal">${escapeText(greek[part] ?? part)}</mi>`).join('<mo>,</mo>')}</mrow></msub>`;
+  return `<msub>${identifier(head)}<mrow>${tail.map((part) => `<mi mathvariant="normal">${escapeText(inGreek(part))}</mi>`).join('<mo>,</mo>')}</mrow></msub>`;
 }
 
 const row = (...parts: string[]) => `<mrow>${parts.join('')}</mrow>`;

@@ -28,7 +28,21 @@ function unitFor(typed: string, shownUnit: string): UnitOf {
       shownUnit === '' || shownUnit === '1' ? 'a number without a unit' : `a unit of the kind ${shownUnit}`;
     return { ok: false, reason: `"${typed}" is ${describeDimension(own.unit.dimension)}; this takes ${wanted}.` };
   }
+  const isPlain = own.unit.dimension.every((exponent) => exponent === 0);
+  if (!isPlain && namesRadians(typed) !== namesRadians(shownUnit)) {
+    return {
+      ok: false,
+      reason:
+        `One of "${typed}" and "${shownUnit}" is in radians, the other can count revolutions ` +
+        `(6.28319 rad = 1 revolution). Convert the number and enter it in ${shownUnit}.`,
+    };
+  }
   return own;
+}
+
+/** The SI takes rad as 1, so that dimensions alone do not tell an angular velocity from a speed in revolutions. */
+function namesRadians(unit: string): boolean {
+  return /(?<![A-Za-z])rad(?![A-Za-z])/.test(unit);
 }
 
 /**

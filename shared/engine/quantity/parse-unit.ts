@@ -46,6 +46,8 @@ const refusals: readonly { readonly pattern: RegExp; readonly reason: string }[]
     reason:
       'is a gas volume at conditions it does not name. Enter a mass, an amount or the volume at the actual state.',
   },
+  { pattern: /\btons?(?![A-Za-z])/, reason: 'can be a metric, a long or a short ton. Write t or kg.' },
+  { pattern: /\b(gal|gallons?)(?![A-Za-z])/, reason: 'can be a US or an imperial gallon. Write L or m3.' },
 ];
 
 const dimensionless: Dimension = [0, 0, 0, 0, 0, 0, 0];
@@ -78,7 +80,9 @@ function readUnit(text: string): UnitReading {
 const kelvin: Dimension = [0, 0, 0, 0, 1, 0, 0];
 const temperatureScales: Readonly<Record<string, { factor: number; offset: number }>> = {
   '°C': { factor: 1, offset: 273.15 },
+  celsius: { factor: 1, offset: 273.15 },
   '°F': { factor: 5 / 9, offset: 459.67 * (5 / 9) },
+  fahrenheit: { factor: 5 / 9, offset: 459.67 * (5 / 9) },
 };
 
 /** Only names of its own: "constructor" is in every object. */
@@ -116,6 +120,8 @@ function combine(text: string): UnitReading {
   let isBelow = false;
   /** Factors since the last slash outside brackets; −1 before the first slash. */
   let sinceSlash = -1;
+  /** Names so far with their powers, to tell a degree that stands alone, as in "(°C)", from one in a product. */
+  const names: (readonly [name: string, power: number])[] = [];
   while (rest !== '') {
     const [token = '', word, exponent] =
       /^(?:(°C|°F|[A-Za-zΩ]+|[%‰]|1(?![\d.]))(?:\^([+-]?\d{1,2}))?|[/()])\s*/.exec(rest) ?? [];
@@ -131,6 +137,7 @@ function combine(text: string): UnitReading {
     }
     if (word !== undefined) {
       const power = sign * Number(exponent ?? 1);
+      if (word !== '1') names.push([word, power]);
       for (const name of (Object.hasOwn(otherNames, word) ? (otherNames[word] ?? word) : word).split(' ')) {
         const unit = oneUnit(name);
         if (!unit)
@@ -157,7 +164,9 @@ function combine(text: string): UnitReading {
     }
   }
   if (signs.length !== 1 || isBelow) return unreadable;
-  return { ok: true, unit: { text, dimension, factor, offset: 0 } };
+  const [[only, power] = ['', 0], ...others] = names;
+  const scale = others.length === 0 && power === 1 ? temperatureScale(only) : undefined;
+  return { ok: true, unit: { text, dimension, factor, offset: scale?.offset ?? 0 } };
 }
 
 /** Superscripts and bare digits after a name become `^n`; every sign of a product becomes a space. */

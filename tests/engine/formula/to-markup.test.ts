@@ -60,3 +60,10 @@ describe('text that is no formula', () => {
     },
   );
 });
+
+it.each(['constructor', 'toString', 'x_constructor', '__proto__', 'hasOwnProperty * valueOf'])(
+  'the name %s, which every object has, is typeset like any other',
+  (text) => {
+    expect(inner(text)).toMatch(/^<m(i|sub|row)>/);
+  },
+);

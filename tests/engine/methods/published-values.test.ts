@@ -42,11 +42,14 @@ describe.each(all)('$method', ({ method: id, records }) => {
   const method = findMethod(id);
   if (!method) throw new Error(`The library has no method ${id}.`);
 
-  it.each(records.map((record) => [record.id, record] as const))('gives the published value %s', (_, record) => {
-    const relative = Math.abs(valueAt(method, record.inputs) / record.expected - 1);
+  it.each(records.map((record) => [record.id, record] as const))(
+    'gives the value of the published form %s',
+    (_, record) => {
+      const relative = Math.abs(valueAt(method, record.inputs) / record.expected - 1);
 
-    expect(relative).toBeLessThanOrEqual(record.relativeTolerance);
-  });
+      expect(relative).toBeLessThanOrEqual(record.relativeTolerance);
+    },
+  );
 
   it.each(records.map((record) => [record.id, record] as const))('knows whether %s lies in its window', (_, record) => {
     const broken = brokenLimits(method, record.inputs);

@@ -31,6 +31,11 @@ describe('a value is read the way it is typed', () => {
     ['.5 m', 'm', 0.5],
     ['15 %', '1', 0.15],
     ['12 L/min', 'm³/s', 2e-4],
+    ['5 celsius', '°C', 278.15],
+    ['5 (°C)', '°C', 278.15],
+    ['60 rpm', '1/s', 1],
+    ['3 rad/s', 'rad/s', 3],
+    ['180 rad/min', 'rad/s', 3],
   ])('%s', (text, shownUnit, value) => {
     const read = parseQuantity(text, shownUnit);
 
@@ -59,8 +64,18 @@ describe('a value is refused with a reason', () => {
     ['-300 °C', '°C', /below absolute zero/],
     ['-300', '°C', /below absolute zero/],
     ['-5 K', '°C', /below absolute zero/],
+    ['-300 celsius', '°C', /below absolute zero/],
+    ['60 rpm', 'rad/s', /6\.28319 rad = 1 revolution/],
+    ['60 1/min', 'rad/s', /revolution/],
+    ['10 rad/s', '1/s', /revolution/],
+    ['10 rad/s', 'rpm', /revolution/],
+    ['2 ton', 'kg', /metric, a long or a short ton/],
   ])('%s in %s', (text, shownUnit, reason) => {
     expect(reasonOf(text, shownUnit)).toMatch(reason);
+  });
+
+  it('does not take a spelled-out degree for a kelvin', () => {
+    expect(reasonOf('5 celsius', 'K')).toMatch(/278\.15 K, or a difference, 5 K/);
   });
 
   it('does not take degrees for a difference that is shown in kelvin, nor turn it into a point on the scale', () => {

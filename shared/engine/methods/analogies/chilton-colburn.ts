@@ -34,7 +34,7 @@ export const chiltonColburn = defineMethod({
   carriesTo: 'Holds in all directions between heat and mass; momentum joins by f/2 only without form drag.',
   source: 'Chilton T.H., Colburn A.P., Ind. Eng. Chem. 26 (1934) 1183-1187',
   year: 1934,
-  status: 'analytic',
+  status: 'from memory',
   pitfalls: [
     'The exponent is 1/3 on Nu and Sh, 2/3 on St.',
     'The further Sc is from Pr, the more the uncertain exponent costs.',

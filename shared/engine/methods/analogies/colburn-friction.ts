@@ -27,7 +27,7 @@ export const colburnFriction = defineMethod({
   carriesTo: 'Heat with Pr in place of Sc.',
   source: 'Chilton T.H., Colburn A.P., Ind. Eng. Chem. 26 (1934) 1183-1187',
   year: 1934,
-  status: 'analytic',
+  status: 'from memory',
   pitfalls: [
     'At Sc near 1000 it lies 11 to 30 % below electrochemical data.',
     'Never in laminar tube flow, nor where there is form drag.',

@@ -18,7 +18,7 @@ export const guptaThodosGas = defineMethod({
   },
   result: { symbol: 'Sh', meaning: 'Sherwood number on the particle diameter', unit: '1' },
   length: 'particle diameter',
-  temperature: 'bulk mean temperature',
+  temperature: 'film temperature',
   window: [
     { group: 'Re', min: 90, max: 4000, basis: 'sourced' },
     { group: 'Sc', min: 0.6, max: 3, basis: 'indicative' },

@@ -180,6 +180,8 @@ export async function editItems(
     }
     changes.push({ kind, id, before: before?.body ?? null, after: body });
   }
+  if (changes.length === 0)
+    throw new Problem('invalid', 'What should be removed is not in the study, so nothing was changed.');
   return { model, changes, itemRevisions };
 }
 
@@ -190,11 +192,14 @@ export async function editorsOf(reader: Reader, studyId: string, ids: readonly s
   const edits = await reader
     .select({
       personId: auditEntry.actorId,
-      touched: sql<string>`JSON_EXTRACT(${auditEntry.payload}, '$.event.changes[*].id')`,
+      // NULL where an entry lists no change at all.
+      touched: sql<string | null>`JSON_EXTRACT(${auditEntry.payload}, '$.event.changes[*].id')`,
     })
     .from(auditEntry)
     .where(and(eq(auditEntry.chain, studyId), eq(auditEntry.kind, 'chain.edited')));
   const wanted = new Set(ids);
-  const editors = edits.filter(({ touched }) => touchedSchema.parse(JSON.parse(touched)).some((id) => wanted.has(id)));
+  const editors = edits.filter(({ touched }) =>
+    touchedSchema.parse(JSON.parse(touched ?? '[]')).some((id) => wanted.has(id)),
+  );
   return [...new Set(editors.map((edit) => edit.personId))];
 }

@@ -1,4 +1,4 @@
-import { and, desc, eq, ne } from 'drizzle-orm';
+import { and, desc, eq, lte, ne } from 'drizzle-orm';
 import type { Submission } from '../../shared/api/submissions.ts';
 import type { SubmissionFacts } from '../../shared/domain/submission-policy.ts';
 import type { SignedInActor } from './actor.ts';
@@ -80,6 +80,7 @@ export async function describeSubmission(reader: Reader, row: SubmissionRow): Pr
         eq(submissions.targetQuantityId, row.targetQuantityId),
         eq(submissions.status, 'signed'),
         ne(submissions.id, row.id),
+        lte(submissions.submittedAt, row.submittedAt),
       ),
     )
     .orderBy(desc(submissions.submittedAt))

@@ -74,5 +74,12 @@ export function canReturn(actor: Asking, submission: SubmissionFacts): Decision 
 
 export function canWithdraw(actor: Asking, submission: SubmissionFacts): Decision {
   if (submission.submittedById !== actor.personId) return denied('Only the person who submitted it may withdraw it.');
+  // Who left the study, or reads it as its auditor now, changes nothing in it any more.
+  if (actor.ability.cannot('comment', studySubject(submission.studyId))) {
+    const role = actor.memberships[submission.studyId];
+    return denied(
+      `You may no longer withdraw it; ${role ? `you are its ${roleNames[role]}` : 'you have no role in it'}.`,
+    );
+  }
   return requireOpen(submission);
 }

@@ -43,19 +43,23 @@ const getWorkListQuery = defineQuery(getWorkList, async ({ actor, reader }) => {
     .innerJoin(submissions, eq(submissions.id, rulings.submissionId))
     // A condition binds once the submission is signed; one of a returned package was never met with.
     .where(and(inArray(submissions.studyId, ids), eq(submissions.status, 'signed')));
-  const signed = await reader
-    .select({
-      submissionId: signatures.submissionId,
-      signerName: signatures.signerName,
-      signedAt: signatures.signedAt,
-      studyId: submissions.studyId,
-      targetName: submissions.targetName,
-    })
-    .from(signatures)
-    .innerJoin(submissions, eq(submissions.id, signatures.submissionId))
-    .where(inArray(submissions.studyId, ids))
-    .orderBy(desc(signatures.signedAt))
-    .limit(latestSignatures);
+  const auditedIds = ids.filter((id) => actor.isAuditor || actor.memberships[id] === 'auditor');
+  const signed =
+    auditedIds.length === 0
+      ? []
+      : await reader
+          .select({
+            submissionId: signatures.submissionId,
+            signerName: signatures.signerName,
+            signedAt: signatures.signedAt,
+            studyId: submissions.studyId,
+            targetName: submissions.targetName,
+          })
+          .from(signatures)
+          .innerJoin(submissions, eq(submissions.id, signatures.submissionId))
+          .where(inArray(submissions.studyId, auditedIds))
+          .orderBy(desc(signatures.signedAt))
+          .limit(latestSignatures);
 
   const work: WorkItem[] = [];
   for (const study of mine) {
@@ -127,21 +131,18 @@ const getWorkListQuery = defineQuery(getWorkList, async ({ actor, reader }) => {
       }
     }
   }
-  if (actor.isAuditor || Object.values(actor.memberships).includes('auditor')) {
-    const audited = mine.filter((study) => actor.isAuditor || actor.memberships[study.id] === 'auditor');
-    for (const one of signed) {
-      const study = audited.find((candidate) => candidate.id === one.studyId);
-      if (!study) continue;
-      work.push({
-        studyId: study.id,
-        studyTitle: study.title,
-        kind: 'latest signature',
-        since: one.signedAt.toISOString(),
-        submissionId: one.submissionId,
-        targetName: one.targetName,
-        byName: one.signerName,
-      });
-    }
+  for (const one of signed) {
+    const study = mine.find((candidate) => candidate.id === one.studyId);
+    if (!study) continue;
+    work.push({
+      studyId: study.id,
+      studyTitle: study.title,
+      kind: 'latest signature',
+      since: one.signedAt.toISOString(),
+      submissionId: one.submissionId,
+      targetName: one.targetName,
+      byName: one.signerName,
+    });
   }
   return { items: work };
 });

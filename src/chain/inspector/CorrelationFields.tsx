@@ -72,14 +72,14 @@ export function CorrelationFields({ route, locked }: RouteFieldsProps<'correlati
             <dd>{method.temperature}</dd>
             <dt className="text-ink-2">Scatter</dt>
             <dd>
-              {plainNumber(method.scatter.relative * 100)} %, {method.scatter.reading}, from {method.scatter.from}
+              {plainNumber(method.scatter.relative * 100)} %, {method.scatter.reading}; {method.scatter.from}
             </dd>
             <dt className="text-ink-2">Source</dt>
             <dd>{method.source}</dd>
             {method.pitfalls.length > 0 && (
               <>
                 <dt className="text-ink-2">Mind</dt>
-                <dd>{method.pitfalls.join('; ')}</dd>
+                <dd>{method.pitfalls.join(' ')}</dd>
               </>
             )}
             <dt className="text-ink-2">Entry is</dt>

@@ -10,12 +10,15 @@ const draftSchema = z.object({
   reasons: z.record(z.string(), z.string()),
 });
 
-const keyOf = (studyId: string) => `stemma-draft:${studyId}`;
+/** By person: whoever signs in next in this tab must not save another's changes as their own. */
+export type DraftOwner = { readonly personId: string; readonly studyId: string };
+
+const keyOf = ({ personId, studyId }: DraftOwner) => `stemma-draft:${personId}:${studyId}`;
 
 /** What was not saved when this tab last showed the study; null where nothing is left or it cannot be read. */
-export function readDraft(studyId: string): Draft | null {
+export function readDraft(owner: DraftOwner): Draft | null {
   try {
-    const text = sessionStorage.getItem(keyOf(studyId));
+    const text = sessionStorage.getItem(keyOf(owner));
     return text === null ? null : draftSchema.parse(JSON.parse(text));
   } catch {
     return null;
@@ -23,10 +26,10 @@ export function readDraft(studyId: string): Draft | null {
 }
 
 /** Keeps the draft over a reload of this tab; with the storage full or forbidden the draft lives in memory only. */
-export function keepDraft(studyId: string, draft: Draft | null): void {
+export function keepDraft(owner: DraftOwner, draft: Draft | null): void {
   try {
-    if (draft === null) sessionStorage.removeItem(keyOf(studyId));
-    else sessionStorage.setItem(keyOf(studyId), JSON.stringify(draft));
+    if (draft === null) sessionStorage.removeItem(keyOf(owner));
+    else sessionStorage.setItem(keyOf(owner), JSON.stringify(draft));
   } catch {
     // The guard against leaving still stands.
   }

@@ -16,6 +16,7 @@ import {
   smallChain,
   studyInReview,
   studyWithChain,
+  submit,
   type Team,
   value,
 } from '../../support/study-team.ts';
@@ -71,6 +72,15 @@ describe('an edit', () => {
         ],
       },
     });
+  });
+
+  it('that removes only what is not there is refused, and the study can still be submitted', async () => {
+    const { studyId, chain } = await studyWithChain(team);
+
+    const reply = await send(team.engineer, studyId, [removal('route', { id: randomUUID() }, 0)]);
+
+    expect(reply.status).toBe(400);
+    expect((await submit(team.engineer, studyId, chain.target)).status).toBe(200);
   });
 
   it('changes nothing at all when one of its items cannot be stored', async () => {

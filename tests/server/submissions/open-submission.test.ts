@@ -120,6 +120,30 @@ describe('a submission', () => {
     expect(body.signedBefore).toEqual(submission.snapshot);
   });
 
+  it('is never compared with what was signed after it', async () => {
+    let clock = Date.parse('2026-03-02T08:00:00Z');
+    const now = () => {
+      clock += 1000;
+      return new Date(clock);
+    };
+    const later = await startTestApp({ now });
+    try {
+      const others = await gatherTeam(later);
+      const { studyId, chain, submission } = await studyInReview(others);
+      await acceptAll(others.manager, submission);
+      await sign(others.manager, submission);
+      await send(others.engineer, studyId, [edit('route', { ...chain.balance, rationale: 'Again.' }, 1)], 'Wording.');
+      const second = (await submit(others.engineer, studyId, chain.target)).body;
+      await acceptAll(others.manager, second);
+      expect((await sign(others.manager, second)).status).toBe(200);
+
+      expect((await seenSubmission(others.manager, submission)).signedBefore).toBeNull();
+      expect((await seenSubmission(others.manager, second)).signedBefore).toEqual(submission.snapshot);
+    } finally {
+      await later.stop();
+    }
+  });
+
   it('takes in again what is approved on a basis that changed', async () => {
     const { studyId, chain, submission } = await studyInReview(team);
     await acceptAll(team.manager, submission);
